@@ -1,19 +1,10 @@
 import { sveltekit } from '@sveltejs/kit/vite';
 import { svelteTesting } from '@testing-library/svelte/vite';
 import tailwindcss from '@tailwindcss/vite';
-import { fileURLToPath } from 'node:url';
 import { defineConfig } from 'vitest/config';
 
 export default defineConfig({
 	plugins: [tailwindcss(), sveltekit()],
-	resolve: {
-		alias: {
-			// superforms' adapter index pulls in every validator; only zod's is wanted.
-			'superforms-zod': fileURLToPath(
-				new URL('./node_modules/sveltekit-superforms/dist/adapters/zod4.js', import.meta.url)
-			)
-		}
-	},
 	worker: { format: 'es' },
 	test: {
 		projects: [
