@@ -1,0 +1,18 @@
+/** The room's door for pianos: types, the shipped models, and models written out. */
+export {
+	HIGHEST_PARTIAL,
+	type InlinePiano,
+	type PartialTone,
+	type PianoModel,
+	type PianoSpec
+} from './piano-types';
+export {
+	KEYBOARD,
+	PIANO_IDS,
+	PianoSpecError,
+	isPianoId,
+	pianoFromSpec,
+	pianoModel,
+	type PianoId
+} from './piano-spec';
+export { loneStringDecayDbPerSecond, strikeLevel } from './piano-tone';
