@@ -3,6 +3,10 @@
  * are passed in.
  */
 import type { ScoredDrillId } from '../drills/types';
+import { isSteady } from './mastery';
+import type { CourseRecords } from './records';
+
+export type { AttemptRecord, CourseRecords, StringCheckRecord } from './records';
 
 export type StepId =
 	'ready' | 'mute-strip' | 'fork' | 'temperament' | 'octaves' | 'unisons' | 'final';
@@ -27,26 +31,6 @@ export const STEPS: readonly Step[] = [
 	{ id: 'unisons', number: 6, name: 'Unisons', parts: PARTS },
 	{ id: 'final', number: 7, name: 'Final check', parts: PARTS }
 ];
-
-export interface AttemptRecord {
-	readonly drill: ScoredDrillId;
-	/** Milliseconds since 1970. */
-	readonly finishedAtMs: number;
-	readonly medianAbsErrorCents: number;
-	readonly inside: number;
-	readonly count: number;
-}
-
-export interface StringCheckRecord {
-	readonly kind: 'note' | 'unison' | 'interval';
-	readonly checkedAtMs: number;
-}
-
-/** What is known of one student, in any order. */
-export interface CourseRecords {
-	readonly attempts: readonly AttemptRecord[];
-	readonly stringChecks: readonly StringCheckRecord[];
-}
 
 /** done: behind you; here: the next piece of work; to-come: not reached or not recorded. */
 export type PartState = 'done' | 'here' | 'to-come';
@@ -75,4 +59,61 @@ export interface NextWork {
 	readonly reason: string;
 	/** About how long it takes. */
 	readonly minutes: number;
+}
+
+/** Parts that have work behind them here, in the order in which they come. */
+const WORK_PARTS: readonly { stepId: StepId; partId: PartId }[] = [
+	{ stepId: 'fork', partId: 'do' },
+	{ stepId: 'fork', partId: 'real' },
+	{ stepId: 'temperament', partId: 'do' },
+	{ stepId: 'temperament', partId: 'real' },
+	{ stepId: 'unisons', partId: 'do' }
+];
+
+/**
+ * Where a student stands: what is done, and the first piece of work that is not. A part without a
+ * record is to come, also when it lies before the place where the student is: nothing is called done
+ * that nobody saw. A real string never blocks the way on: whoever has no piano goes on with the drills.
+ */
+export function whereInOrder(records: CourseRecords): OrderState {
+	const here = placeOf(records);
+	const steps = STEPS.map((step): StepState => {
+		const states = Object.fromEntries(
+			step.parts.map((partId) => [partId, stateOf(records, step.id, partId, here)])
+		) as Record<PartId, PartState>;
+		return { ...step, states, here: step.id === here.stepId };
+	});
+	return { ...here, steps };
+}
+
+function stateOf(
+	records: CourseRecords,
+	stepId: StepId,
+	partId: PartId,
+	here: { stepId: StepId; partId: PartId }
+): PartState {
+	if (here.stepId === stepId && here.partId === partId) return 'here';
+	return isDone(records, stepId, partId) ? 'done' : 'to-come';
+}
+
+function placeOf(records: CourseRecords): { stepId: StepId; partId: PartId } {
+	const open = WORK_PARTS.filter(({ stepId, partId }) => !isDone(records, stepId, partId));
+	// The first exercise of the hand that is still open; when none is, the first real string.
+	return open.find(({ partId }) => partId === 'do') ?? open[0] ?? { stepId: 'final', partId: 'do' };
+}
+
+/** The median error of a working tuner's unisons, cents (common practice, no source). */
+const WORKING_UNISON_CENTS = 0.6;
+
+/** Whether the records show that a part is behind the student. */
+export function isDone(records: CourseRecords, stepId: StepId, partId: PartId): boolean {
+	const key = `${stepId}.${partId}`;
+	if (key === 'fork.do') return isSteady(records, 'unison');
+	if (key === 'temperament.do') return isSteady(records, 'interval');
+	if (key === 'unisons.do') return isSteady(records, 'unison', WORKING_UNISON_CENTS);
+	if (key === 'fork.real') return records.stringChecks.some(({ kind }) => kind === 'unison');
+	if (key === 'temperament.real') {
+		return records.stringChecks.some(({ kind }) => kind === 'interval');
+	}
+	return false;
 }
