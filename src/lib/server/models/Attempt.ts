@@ -43,6 +43,8 @@ export class Attempt extends Model<InferAttributes<Attempt>, InferCreationAttrib
 	declare errorMedian: number;
 	declare errorLow: number;
 	declare errorHigh: number;
+	/** What its trials were judged by: the median of their tolerances, cents. */
+	declare toleranceCents: number;
 	declare inside: number;
 	declare trialCount: number;
 	declare seconds: number;
@@ -72,6 +74,7 @@ export function defineAttempt(sequelize: Sequelize): void {
 			errorMedian: real,
 			errorLow: real,
 			errorHigh: real,
+			toleranceCents: real,
 			inside: integer(),
 			trialCount: integer(),
 			seconds: integer(),

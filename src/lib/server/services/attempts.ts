@@ -80,6 +80,7 @@ function rowOf(actor: Actor, submission: AttemptSubmission, result: BlockResult,
 		errorMedian: error.median,
 		errorLow: error.low,
 		errorHigh: error.high,
+		toleranceCents: medianWithInterval(result.trials.map((trial) => trial.toleranceCents)).median,
 		inside: result.inside,
 		trialCount: result.count,
 		seconds: Math.round(playedMs / 1000),
@@ -95,9 +96,10 @@ async function insertOnce(row: Row, transaction: Transaction): Promise<boolean> 
 	const [rows] = await database().query(
 		`INSERT INTO attempt (id, student_id, drill, engine_version, seed, content_hash, stimulus, device,
 			trials, client_score, server_score, score_flagged, result, error_median, error_low,
-			error_high, inside, trial_count, seconds, day, started_at, finished_at, received_at)
+			error_high, tolerance_cents, inside, trial_count, seconds, day, started_at, finished_at,
+			received_at)
 		VALUES ($1, $2, $3, $4, $5, $6, $7, $8, $9, $10, $11, $12, $13, $14, $15, $16, $17, $18, $19,
-			$20, $21, $22, $23)
+			$20, $21, $22, $23, $24)
 		ON CONFLICT (id) DO NOTHING RETURNING id`,
 		{
 			transaction,
@@ -118,6 +120,7 @@ async function insertOnce(row: Row, transaction: Transaction): Promise<boolean> 
 				row.errorMedian,
 				row.errorLow,
 				row.errorHigh,
+				row.toleranceCents,
 				row.inside,
 				row.trialCount,
 				row.seconds,

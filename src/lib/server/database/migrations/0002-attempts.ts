@@ -7,7 +7,7 @@ import type { QueryInterface } from 'sequelize';
  * An attempt is written once and never changed: a trigger refuses every update. `day` is the day, in
  * UTC, on which it counts; `attempt_daily` holds one row for each student, drill and day, recomputed
  * in the transaction that adds the attempt. `error_low` and `error_high` are the 95 % interval of
- * `error_median`.
+ * `error_median`; `tolerance_cents` is the tolerance its trials were judged by (their median).
  */
 const UP = `
 CREATE TABLE attempt (
@@ -27,6 +27,7 @@ CREATE TABLE attempt (
 	error_median double precision NOT NULL CHECK (error_median >= 0),
 	error_low double precision NOT NULL,
 	error_high double precision NOT NULL,
+	tolerance_cents double precision NOT NULL CHECK (tolerance_cents > 0),
 	inside integer NOT NULL CHECK (inside >= 0),
 	trial_count integer NOT NULL CHECK (trial_count >= 1),
 	seconds integer NOT NULL CHECK (seconds >= 0),
@@ -41,7 +42,7 @@ CREATE TABLE attempt (
 );
 CREATE INDEX attempt_student_finished ON attempt (student_id, finished_at DESC, id DESC);
 CREATE INDEX attempt_student_drill_finished ON attempt (student_id, drill, finished_at DESC, id DESC)
-	INCLUDE (day, error_median, error_low, error_high, inside, trial_count, seconds);
+	INCLUDE (day, error_median, error_low, error_high, tolerance_cents, inside, trial_count);
 CREATE INDEX attempt_student_drill_day ON attempt (student_id, drill, day)
 	INCLUDE (error_median, seconds);
 
