@@ -54,7 +54,7 @@ type Row = ReturnType<typeof rowOf>;
 function rowOf(actor: Actor, submission: AttemptSubmission, result: BlockResult, now: Date) {
 	const finishedMs = Date.parse(submission.finishedAt);
 	const startedMs = Date.parse(submission.startedAt);
-	if (startedMs < 0) throw new Refusal('invalid', 'The attempt is malformed at startedAt.');
+	if (!(startedMs >= 0 && finishedMs >= 0)) throw new Refusal('invalid', 'The attempt is malformed at startedAt.');
 	// A clock that runs ahead does not put work into the future.
 	const aheadMs = Math.max(0, finishedMs - now.getTime());
 	const finishedAt = new Date(finishedMs - aheadMs);

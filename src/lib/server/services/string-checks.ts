@@ -85,7 +85,7 @@ export async function storeStringCheck(
 	}
 	const check = { ...parsed.data, id: parsed.data.id.toLowerCase() };
 	const checkedMs = Date.parse(check.checkedAt);
-	if (checkedMs < 0) throw new Refusal('invalid', 'The string check is malformed at checkedAt.');
+	if (!(checkedMs >= 0)) throw new Refusal('invalid', 'The string check is malformed at checkedAt.');
 	const hash = contentHash(check);
 	const [rows] = await database().query(
 		`INSERT INTO string_check (id, student_id, content_hash, kind, notes, source, result, device,

@@ -1,0 +1,33 @@
+import { json } from '@sveltejs/kit';
+import { requireRole } from '$lib/server/auth';
+import { readJson, refusalProblem } from '$lib/server/json-endpoint';
+import { listOwnAttempts } from '$lib/server/services/attempt-reading';
+import { storeAttempt } from '$lib/server/services/attempts';
+import type { RequestHandler } from './$types';
+
+/** A block of ten long trials with every move recorded stays well below this. */
+const LARGEST_ATTEMPT_BYTES = 500_000;
+
+/** Stores an attempt: 201 the first time, 200 with the same answer when it is sent again. */
+export const POST: RequestHandler = async (event) => {
+	const actor = requireRole(event, 'student', 'instructor');
+	const body = await readJson(event.request, LARGEST_ATTEMPT_BYTES);
+	if (body.refused) return body.refused;
+	try {
+		const { created, ...stored } = await storeAttempt(actor, body.value);
+		return json(stored, { status: created ? 201 : 200 });
+	} catch (error) {
+		return refusalProblem(error, 'The attempt was not stored');
+	}
+};
+
+/** The signed-in person's own attempts, newest first; `?cursor=` continues. */
+export const GET: RequestHandler = async (event) => {
+	const actor = requireRole(event, 'student', 'instructor');
+	try {
+		const page = await listOwnAttempts(actor, event.url.searchParams.get('cursor'));
+		return json(page, { headers: { 'cache-control': 'private, no-store' } });
+	} catch (error) {
+		return refusalProblem(error, 'The list cannot be read');
+	}
+};
