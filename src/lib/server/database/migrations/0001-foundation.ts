@@ -112,7 +112,8 @@ CREATE TABLE tolerance_set (
 	moved_by_blows_cents real NOT NULL CHECK (moved_by_blows_cents > 0 AND moved_by_blows_cents <= 50),
 	created_by uuid REFERENCES "user" (id) ON DELETE SET NULL
 );
-CREATE UNIQUE INDEX tolerance_set_in_force ON tolerance_set (class_id, in_force_from) NULLS NOT DISTINCT;
+CREATE UNIQUE INDEX tolerance_set_in_force ON tolerance_set
+	(COALESCE(class_id, '00000000-0000-0000-0000-000000000000'), in_force_from);
 
 -- The house set: "learning" (common practice, no source).
 INSERT INTO tolerance_set (level, in_force_from, fork_cents, temperament_cents,
