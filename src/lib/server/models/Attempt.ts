@@ -81,7 +81,7 @@ export function defineAttempt(sequelize: Sequelize): void {
 			day: { type: DataTypes.DATEONLY, allowNull: false },
 			startedAt: moment(),
 			finishedAt: moment(),
-			receivedAt: momentNow
+			receivedAt: momentNow()
 		},
 		{ sequelize, tableName: 'attempt', underscored: true, timestamps: false }
 	);

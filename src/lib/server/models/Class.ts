@@ -44,7 +44,7 @@ export class Membership extends Model<
 export function defineClass(sequelize: Sequelize): void {
 	Class.init(
 		{
-			id: uuidKey,
+			id: uuidKey(),
 			name: text(),
 			startsOn: { type: DataTypes.DATEONLY, allowNull: true },
 			endsOn: { type: DataTypes.DATEONLY, allowNull: true },
@@ -57,11 +57,11 @@ export function defineClass(sequelize: Sequelize): void {
 	);
 	Membership.init(
 		{
-			id: uuidKey,
+			id: uuidKey(),
 			classId: uuid(),
 			userId: uuid(),
 			role: text(),
-			joinedAt: momentNow,
+			joinedAt: momentNow(),
 			leftAt: moment(true)
 		},
 		{ sequelize, tableName: 'membership', underscored: true, timestamps: false }

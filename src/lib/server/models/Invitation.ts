@@ -51,7 +51,7 @@ export class PasswordReset extends Model<
 export function defineInvitation(sequelize: Sequelize): void {
 	Invitation.init(
 		{
-			id: uuidKey,
+			id: uuidKey(),
 			classId: uuid(),
 			email: { type: DataTypes.CITEXT, allowNull: false },
 			tokenHash: text(),
@@ -60,7 +60,7 @@ export function defineInvitation(sequelize: Sequelize): void {
 			acceptedAt: moment(true),
 			acceptedBy: uuid(true),
 			revokedAt: moment(true),
-			createdAt: momentNow
+			createdAt: momentNow()
 		},
 		{ sequelize, tableName: 'invitation', underscored: true, timestamps: false }
 	);
@@ -69,13 +69,13 @@ export function defineInvitation(sequelize: Sequelize): void {
 
 	PasswordReset.init(
 		{
-			id: uuidKey,
+			id: uuidKey(),
 			userId: uuid(),
 			tokenHash: text(),
 			purpose: text(),
 			expiresAt: moment(),
 			usedAt: moment(true),
-			createdAt: momentNow
+			createdAt: momentNow()
 		},
 		{ sequelize, tableName: 'password_reset', underscored: true, timestamps: false }
 	);

@@ -50,30 +50,30 @@ export class AuditEntry extends Model<
 export function defineOutbox(sequelize: Sequelize): void {
 	OutboxMail.init(
 		{
-			id: uuidKey,
+			id: uuidKey(),
 			kind: text(),
 			recipient: { type: DataTypes.CITEXT, allowNull: false },
 			subject: text(),
 			textBody: text(true),
 			htmlBody: text(true),
 			attempts: { ...integer(), defaultValue: 0 },
-			nextAttemptAt: momentNow,
+			nextAttemptAt: momentNow(),
 			sentAt: moment(true),
 			gaveUpAt: moment(true),
 			lastError: text(true),
-			createdAt: momentNow
+			createdAt: momentNow()
 		},
 		{ sequelize, tableName: 'mail_outbox', underscored: true, timestamps: false }
 	);
 	AuditEntry.init(
 		{
-			id: uuidKey,
+			id: uuidKey(),
 			actorId: uuid(true),
 			action: text(),
 			subjectType: text(true),
 			subjectId: text(true),
 			detail: { ...json(), defaultValue: {} },
-			createdAt: momentNow
+			createdAt: momentNow()
 		},
 		{ sequelize, tableName: 'audit_entry', underscored: true, timestamps: false }
 	);

@@ -23,12 +23,12 @@ export class Remark extends Model<InferAttributes<Remark>, InferCreationAttribut
 export function defineRemark(sequelize: Sequelize): void {
 	Remark.init(
 		{
-			id: uuidKey,
+			id: uuidKey(),
 			studentId: uuid(),
 			authorId: uuid(),
 			attemptId: uuid(true),
 			text: text(),
-			createdAt: momentNow,
+			createdAt: momentNow(),
 			seenAt: moment(true)
 		},
 		{ sequelize, tableName: 'remark', underscored: true, timestamps: false }

@@ -40,7 +40,7 @@ export function defineStringCheck(sequelize: Sequelize): void {
 			result: json(),
 			device: json(),
 			checkedAt: moment(),
-			receivedAt: momentNow
+			receivedAt: momentNow()
 		},
 		{ sequelize, tableName: 'string_check', underscored: true, timestamps: false }
 	);

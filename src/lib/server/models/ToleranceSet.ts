@@ -36,10 +36,10 @@ export class ToleranceSet extends Model<
 export function defineToleranceSet(sequelize: Sequelize): void {
 	ToleranceSet.init(
 		{
-			id: uuidKey,
+			id: uuidKey(),
 			classId: uuid(true),
 			level: text(),
-			inForceFrom: momentNow,
+			inForceFrom: momentNow(),
 			forkCents: cents,
 			temperamentCents: cents,
 			lowAndSixthOctaveCents: cents,

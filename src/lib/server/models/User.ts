@@ -28,7 +28,7 @@ export class User extends Model<InferAttributes<User>, InferCreationAttributes<U
 export function defineUser(sequelize: Sequelize): void {
 	User.init(
 		{
-			id: uuidKey,
+			id: uuidKey(),
 			email: { type: DataTypes.CITEXT, allowNull: false, unique: true },
 			name: text(),
 			role: text(),
