@@ -1,3 +1,4 @@
+import { interpolate } from './interpolation';
 import type { PianoShape } from './piano-shapes';
 import { HIGHEST_PARTIAL, type PartialTone } from './piano-types';
 import { partialHzFromF1 } from './stiff-string';
@@ -39,17 +40,6 @@ const LEVEL_WINDOW_S = 0.2;
 const AUDIBLE_LIMIT_HZ = 20_000;
 /** The comb of the strike point never quite reaches zero: a hammer is some millimetres wide. */
 const COMB_FLOOR = 0.04;
-
-/** Value at `x` on straight lines between nodes, constant outside them. */
-export function interpolate(nodes: readonly (readonly [number, number])[], x: number): number {
-	if (x <= nodes[0][0]) return nodes[0][1];
-	for (let i = 1; i < nodes.length; i += 1) {
-		const [x0, y0] = nodes[i - 1];
-		const [x1, y1] = nodes[i];
-		if (x <= x1) return y0 + ((y1 - y0) * (x - x0)) / (x1 - x0);
-	}
-	return nodes[nodes.length - 1][1];
-}
 
 /** Decay of one string of the note sounding alone, first partial, dB/s, before a piano's factor. */
 export function loneStringDecayDbPerSecond(midi: Midi): number {
