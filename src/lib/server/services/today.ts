@@ -40,6 +40,11 @@ export async function todayOf(actor: Actor, now: Date): Promise<Today> {
 	};
 }
 
+/** Where the actor stands in the working order, for the rule above the work. */
+export async function orderOf(actor: Actor): Promise<OrderState> {
+	return whereInOrder(await courseRecords(actor));
+}
+
 /** What the course needs to know of the actor's own work. */
 export async function courseRecords(actor: Actor): Promise<CourseRecords> {
 	const scope = ownScope(actor);
