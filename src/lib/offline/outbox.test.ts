@@ -43,7 +43,7 @@ function toolsFor(name: string, answers: (id: string) => Answer): OutboxTools {
 	};
 }
 
-const stored = (score = 1.5) => Response.json({ serverScore: score }, { status: 201 });
+const stored = (score = 1.5) => Response.json({ score }, { status: 201 });
 const freshName = () => `outbox-${(databaseCount += 1)}`;
 
 beforeEach(() => {
@@ -147,6 +147,20 @@ describe('outbox', () => {
 		expect(sent.filter(({ id }) => id === 'bad')).toHaveLength(1);
 		await outbox.dismissRefused(ANNA, 'bad');
 		expect(await outbox.list(ANNA)).toEqual([]);
+	});
+
+	it('takes a 404 for an answer only when it is described', async () => {
+		const replaced = createOutbox(toolsFor(freshName(), () => new Response('', { status: 404 })));
+		await replaced.enqueue(ANNA, attempt('a'));
+		expect(await replaced.flush(ANNA)).toMatchObject({ waiting: 1, stopped: 'server-busy' });
+		const described = () =>
+			new Response(JSON.stringify({ detail: 'This attempt cannot be stored for your account.' }), {
+				status: 404,
+				headers: { 'content-type': 'application/problem+json' }
+			});
+		const answered = createOutbox(toolsFor(freshName(), described));
+		await answered.enqueue(ANNA, attempt('a'));
+		expect((await answered.flush(ANNA)).refused).toHaveLength(1);
 	});
 
 	it('never dismisses what still waits', async () => {

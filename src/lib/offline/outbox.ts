@@ -162,16 +162,22 @@ async function afterRefusal(response: Response): Promise<SendOutcome> {
 	if (status === 401 || status === 0 || (status >= 300 && status < 400)) {
 		return { kind: 'later', reason: 'signed-out', waitMs: null };
 	}
+	// A 404 without a problem description is a server that is being replaced, not an answer.
+	const nobody = status === 404 && !isProblem(response);
 	// Not this attempt's fault: the server is away, busy, or being replaced.
-	if (status >= 500 || [404, 405, 408, 425, 429].includes(status)) {
+	if (nobody || status >= 500 || [405, 408, 425, 429].includes(status)) {
 		return { kind: 'later', reason: 'server-busy', waitMs: retryAfterMs(response) };
 	}
 	return { kind: 'refused', sentence: await refusalSentence(response) };
 }
 
+function isProblem(response: Response): boolean {
+	return response.headers.get('content-type')?.startsWith('application/problem+json') ?? false;
+}
+
 async function storedAttempt(id: string, response: Response): Promise<StoredAttempt> {
 	const answer: unknown = await response.json().catch(() => null);
-	const score = (answer as { serverScore?: unknown } | null)?.serverScore;
+	const score = (answer as { score?: unknown } | null)?.score;
 	return { id, serverScore: typeof score === 'number' ? score : null, answer };
 }
 
