@@ -1,0 +1,100 @@
+import { allPairs, allSplits, audibleComponents, type Split, type SplitWindow } from './clusters';
+import type { OrderFit } from './orders';
+
+/** Where an interval's two notes are expected within the band, hertz re the band's centre. */
+export interface ExpectedPlaces {
+	lowHz: number;
+	highHz: number;
+	/** Uncertainty of their distance in hertz. */
+	sigmaHz: number;
+}
+
+/** A rate by the cluster rules, before its width is known. */
+export interface RuledRate {
+	split: Split;
+	/** How the groups were found. */
+	by: 'clusters' | 'pair';
+	/** Other rates that can be heard beside it, strongest first. */
+	others: Split[];
+}
+
+const MIN_SEPARATION = 2.5;
+const MIN_DEPTH = 0.15;
+const MIN_CYCLES = 1.5;
+const AUDIBLE_DB = -20;
+
+/**
+ * One string group sounding alone: the split of its components into two clear groups with the
+ * largest separation times depth; else the strongest pair that completes a cycle visibly.
+ * @returns null when nothing completes a cycle
+ */
+export function unisonRate(fit: OrderFit, window: SplitWindow, maxHz: number): RuledRate | null {
+	const parts = audibleComponents(fit.fit.components, window, AUDIBLE_DB, maxHz);
+	const qualifying = allSplits(parts, window).filter(
+		({ separation, depth, cycles }) =>
+			separation >= MIN_SEPARATION && depth >= MIN_DEPTH && cycles >= MIN_CYCLES
+	);
+	const pairs = allPairs(parts, window)
+		.filter(({ depth, cycles }) => depth >= MIN_DEPTH && cycles >= 1)
+		.sort((a, b) => b.depth - a.depth);
+	if (qualifying.length > 0) {
+		const split = qualifying.reduce((a, b) =>
+			b.separation * b.depth > a.separation * a.depth ? b : a
+		);
+		return { split, by: 'clusters', others: pairs.filter((pair) => !within(pair, split)) };
+	}
+	if (pairs.length === 0) return null;
+	return { split: pairs[0], by: 'pair', others: pairs.slice(1) };
+}
+
+/** Whether a pair's rate is that of the split, give or take the groups' widths. */
+function within(pair: Split, split: Split): boolean {
+	const width = split.lowSpreadHz + split.highSpreadHz + 0.1 + 0.05 * split.rateHz;
+	return Math.abs(pair.rateHz - split.rateHz) <= 2 * width;
+}
+
+const INTERVAL_AUDIBLE_DB = -30;
+const INTERVAL_DEPTH = 0.05;
+
+/**
+ * Two notes: the split whose groups lie nearest to where the notes' own partials say they are.
+ * @returns null when no split fits the expectation
+ */
+export function intervalRate(
+	fit: OrderFit,
+	window: SplitWindow,
+	maxHz: number,
+	expected: ExpectedPlaces | null
+): RuledRate | null {
+	const parts = audibleComponents(fit.fit.components, window, INTERVAL_AUDIBLE_DB, maxHz);
+	const splits = allSplits(parts, window).filter(
+		({ depth, separation, cycles }) =>
+			depth >= INTERVAL_DEPTH && separation >= 1.2 && cycles >= MIN_CYCLES
+	);
+	let best: Split | null = null;
+	let bestScore = 0;
+	for (const split of splits) {
+		if (!plausible(split, expected)) continue;
+		const score = split.separation * split.depth * nearness(split, expected);
+		if (score > bestScore) {
+			best = split;
+			bestScore = score;
+		}
+	}
+	return best && { split: best, by: 'clusters', others: [] };
+}
+
+function nearness(split: Split, expected: ExpectedPlaces | null): number {
+	if (!expected) return 1;
+	const [a, b] = [expected.lowHz, expected.highHz].sort((x, y) => x - y);
+	const distance = Math.hypot(split.lowHz - a, split.highHz - b);
+	return 1 / (1 + (distance / expected.sigmaHz) ** 2);
+}
+
+function plausible(split: Split, expected: ExpectedPlaces | null): boolean {
+	if (!expected) return split.separation >= 4;
+	const wanted = Math.abs(expected.highHz - expected.lowHz);
+	const error = Math.abs(split.rateHz - wanted);
+	if (split.rateHz > 3) return error <= Math.max(2.5, 0.2 * wanted);
+	return error <= 0.5 && split.separation >= 4;
+}
