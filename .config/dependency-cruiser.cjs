@@ -25,7 +25,17 @@ module.exports = {
 			comment: 'An unresolved import makes every other rule pass silently.',
 			severity: 'error',
 			from: {},
-			to: { couldNotResolve: true, pathNot: ['^\\$app/', '^\\$env/', '^\\./\\$types', '^\\$service-worker', '\\?worker', '^virtual:'] }
+			to: {
+				couldNotResolve: true,
+				pathNot: [
+					'^\\$app/',
+					'^\\$env/',
+					'^\\./\\$types',
+					'^\\$service-worker',
+					'\\?worker',
+					'^virtual:'
+				]
+			}
 		},
 		{ name: 'no-cycles', severity: 'error', from: {}, to: { circular: true } },
 		{
@@ -45,7 +55,12 @@ module.exports = {
 			severity: 'error',
 			from: {
 				path: '^src/',
-				pathNot: ['^src/lib/drills/simulation/', '^src/lib/server/database/seeders/', '^src/cli/', '\\.test\\.ts$']
+				pathNot: [
+					'^src/lib/drills/simulation/',
+					'^src/lib/server/database/seeders/',
+					'^src/cli/',
+					'\\.test\\.ts$'
+				]
 			},
 			to: { path: '^src/lib/drills/simulation/' }
 		},
@@ -59,16 +74,30 @@ module.exports = {
 		room(
 			'server',
 			'^src/lib/server/',
-			lib('server', 'acoustics', 'mechanics', 'drills', 'course', 'measurement/dsp', 'measurement/types')
+			lib(
+				'server',
+				'acoustics',
+				'mechanics',
+				'drills',
+				'course',
+				'measurement/dsp',
+				'measurement/types'
+			)
 		),
 		room('ui-knows-no-domain', '^src/lib/components/ui/', lib('components/ui')),
-		room(
-			'components-not-server',
-			'^src/lib/components/(?!ui/)',
-			[
-				...lib('components', 'acoustics', 'mechanics', 'drills', 'course', 'synthesis', 'measurement', 'offline', 'assets')
-			]
-		),
+		room('components-not-server', '^src/lib/components/(?!ui/)', [
+			...lib(
+				'components',
+				'acoustics',
+				'mechanics',
+				'drills',
+				'course',
+				'synthesis',
+				'measurement',
+				'offline',
+				'assets'
+			)
+		]),
 		{
 			name: 'pages-not-server',
 			severity: 'error',
@@ -97,8 +126,20 @@ module.exports = {
 		{
 			name: 'worklets-kernels-only',
 			severity: 'error',
-			from: { path: '\\.(worklet|worker)\\.ts$' },
-			to: { path: '^src/', pathNot: '^src/lib/(acoustics|mechanics|[a-z]+/dsp|[a-z]+/worklets|measurement/types)' }
+			from: { path: '\\.worklet\\.ts$' },
+			to: { path: '^src/', pathNot: '^src/lib/(acoustics|mechanics|[a-z]+/dsp|[a-z]+/worklets)/' }
+		},
+		{
+			name: 'workers-analyse-only',
+			comment:
+				'A worker may decode and analyse as well; it never opens a device or talks to the page.',
+			severity: 'error',
+			from: { path: '\\.worker\\.ts$' },
+			to: {
+				path: '^src/',
+				pathNot:
+					'^src/lib/(acoustics/|mechanics/|[a-z]+/dsp/|measurement/(types|decode|analysis)\\.ts$)'
+			}
 		},
 		{
 			name: 'command-line',

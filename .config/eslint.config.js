@@ -10,7 +10,14 @@ const PURE = ['acoustics', 'mechanics', 'drills', 'course', 'synthesis/dsp', 'me
 const pureFiles = PURE.map((room) => `**/src/lib/${room}/**/*.ts`);
 
 export default defineConfig(
-	globalIgnores(['**/build/', '**/.svelte-kit/', '**/.ebbtone/', '**/node_modules/', '**/fixtures/', '**/static/']),
+	globalIgnores([
+		'**/build/',
+		'**/.svelte-kit/',
+		'**/.ebbtone/',
+		'**/node_modules/',
+		'**/fixtures/',
+		'**/static/'
+	]),
 	js.configs.recommended,
 	...ts.configs.recommended,
 	...svelte.configs.recommended,
