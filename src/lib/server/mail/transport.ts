@@ -1,0 +1,39 @@
+import { createTransport, type Transporter } from 'nodemailer';
+import { env } from '../env';
+
+let transport: { url: string; transporter: Transporter } | undefined;
+
+/**
+ * Hands one mail to the SMTP server of SMTP_URL.
+ * @throws what the server or the network answered.
+ */
+export async function sendBySmtp(mail: {
+	to: string;
+	subject: string;
+	text: string;
+	html: string;
+	messageId: string;
+}): Promise<void> {
+	const { SMTP_URL: url, MAIL_FROM: from } = env();
+	if (transport?.url !== url) {
+		transport?.transporter.close();
+		const transporter = createTransport(url, {
+			from,
+			// A recipient is an address, never a path or a link to fetch.
+			disableFileAccess: true,
+			disableUrlAccess: true
+		});
+		transport = { url, transporter };
+	}
+	await transport.transporter.sendMail({
+		...mail,
+		to: { name: '', address: mail.to },
+		headers: { 'Auto-Submitted': 'auto-generated' }
+	});
+}
+
+/** Closes idle connections to the SMTP server. */
+export function closeTransport(): void {
+	transport?.transporter.close();
+	transport = undefined;
+}
