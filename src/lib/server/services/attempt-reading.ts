@@ -96,6 +96,8 @@ export interface AttemptView {
 	result: BlockResult;
 	device: DeviceFacts;
 	score: number;
+	/** The 95 % interval of the median |error|, cents. */
+	interval: [low: number, high: number];
 	scoreFlagged: boolean;
 	/** ISO 8601, UTC. */
 	startedAt: string;
@@ -118,7 +120,9 @@ export async function studentAttempt(
 	return attemptIn(classStudentScope(actor, classId, studentId), attemptId);
 }
 
-type AttemptRow = Dated<Omit<AttemptView, 'student' | 'seed'>> & {
+type AttemptRow = Dated<Omit<AttemptView, 'student' | 'seed' | 'interval'>> & {
+	errorLow: number;
+	errorHigh: number;
 	/** bigint arrives as text. */
 	seed: string;
 	studentId: string;
@@ -130,7 +134,8 @@ async function attemptIn(scope: Scope, attemptId: string): Promise<AttemptView> 
 	const [row] = await database().query<AttemptRow>(
 		`WITH ${scope.cte}
 		SELECT a.id, a.drill, a.engine_version AS "engineVersion", a.seed, a.stimulus, a.trials,
-			a.result, a.device, a.server_score AS score, a.score_flagged AS "scoreFlagged",
+			a.result, a.device, a.error_low AS "errorLow", a.error_high AS "errorHigh",
+			a.server_score AS score, a.score_flagged AS "scoreFlagged",
 			a.started_at AS "startedAt", a.finished_at AS "finishedAt",
 			u.id AS "studentId", u.name AS "studentName"
 		FROM visible v
@@ -140,9 +145,10 @@ async function attemptIn(scope: Scope, attemptId: string): Promise<AttemptView> 
 		{ type: QueryTypes.SELECT, replacements: { ...scope.values, attemptId } }
 	);
 	if (!row) throw new Refusal('not-found', 'There is no such attempt.');
-	const { studentId, studentName, seed, ...rest } = row;
+	const { studentId, studentName, seed, errorLow, errorHigh, ...rest } = row;
 	return {
 		...written(rest),
+		interval: [errorLow, errorHigh],
 		seed: Number(seed),
 		student: { id: studentId, name: studentName }
 	};

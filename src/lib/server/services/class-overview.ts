@@ -3,12 +3,10 @@ import type { ScoredDrillId } from '../../drills/types';
 import type { Actor } from '../auth';
 import { database } from '../database';
 import { Refusal } from '../refusal';
-import { trendOf, verdictOf, type Trend } from './trend';
+import { TREND_DAYS, trendOf, verdictOf, type Trend } from './trend';
 import { classScope, type Scope } from './visibility';
 
 const DRILLS: readonly ScoredDrillId[] = ['unison', 'interval'];
-/** Days a trend looks back on. */
-const TREND_DAYS = 28;
 
 /** Where a student stands at one drill. */
 export interface DrillStanding {

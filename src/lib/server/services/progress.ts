@@ -5,6 +5,7 @@ import { database } from '../database';
 import { Refusal } from '../refusal';
 import { remarksIn, type RemarkView } from './remarks';
 import { stringChecksIn, type StringCheckView } from './string-checks';
+import { TREND_DAYS, trendOf, verdictOf, type Trend } from './trend';
 import { classStudentScope, ownScope, type Scope } from './visibility';
 
 /** Attempts drawn in one curve, newest kept. */
@@ -46,6 +47,10 @@ export interface DrillProgress {
 	days: ProgressDay[];
 	/** The tolerance of the latest attempt, cents; null before the first. */
 	toleranceCents: number | null;
+	/** Where the latest attempt's interval lies against it; null before the first. */
+	verdict: 'inside' | 'near' | 'outside' | null;
+	/** What the last four weeks of practice say. */
+	trend: Trend;
 }
 
 export interface Progress {
@@ -100,16 +105,37 @@ async function progressIn(scope: Scope): Promise<Progress> {
 		stringChecksIn(scope, CHECKS),
 		remarksIn(scope)
 	]);
-	const drills = DRILLS.map((drill): DrillProgress => {
-		const own = points.filter((point) => point.drill === drill);
-		return {
+	const drills = DRILLS.map((drill) =>
+		drillProgress(
 			drill,
-			points: own.map(({ drill: _drill, ...point }) => point),
-			days: days.filter((day) => day.drill === drill).map(({ drill: _drill, ...day }) => day),
-			toleranceCents: own.at(-1)?.toleranceCents ?? null
-		};
-	});
+			points.filter((point) => point.drill === drill).map(({ drill: _drill, ...point }) => point),
+			days.filter((day) => day.drill === drill).map(({ drill: _drill, ...day }) => day)
+		)
+	);
 	return { drills, stringChecks, remarks };
+}
+
+function drillProgress(
+	drill: ScoredDrillId,
+	points: ProgressPoint[],
+	days: ProgressDay[]
+): DrillProgress {
+	const last = points.at(-1);
+	const recent = recentDays(days).map((day) => day.medianErrorCents);
+	return {
+		drill,
+		points,
+		days,
+		toleranceCents: last?.toleranceCents ?? null,
+		verdict: last ? verdictOf(last.errorLowCents, last.errorHighCents, last.toleranceCents) : null,
+		trend: last ? trendOf(recent, last.toleranceCents) : 'too-few'
+	};
+}
+
+/** The days of practice within four weeks of the latest one. */
+function recentDays(days: readonly ProgressDay[]): ProgressDay[] {
+	const latest = Date.parse(days.at(-1)?.day ?? '1970-01-01');
+	return days.filter(({ day }) => latest - Date.parse(day) < TREND_DAYS * 86_400_000);
 }
 
 /** The newest attempts of each drill that a scope of one student reaches, oldest first. */

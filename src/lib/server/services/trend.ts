@@ -7,13 +7,8 @@
  */
 export type Trend = 'there' | 'closing-in' | 'level' | 'further-off' | 'too-few';
 
-export const TREND_WORDS: Record<Trend, string> = {
-	there: 'there',
-	'closing-in': 'closing in',
-	level: 'level',
-	'further-off': 'further off',
-	'too-few': 'too few days'
-};
+/** Days a trend looks back on. */
+export const TREND_DAYS = 28;
 
 const CHANGE = Math.log(1.15);
 

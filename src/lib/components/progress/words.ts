@@ -1,0 +1,76 @@
+import type { ScoredDrillId } from '../../drills/types';
+import type { DrillProgress, StringCheck, Trend } from './types';
+
+/** The trend in a word or two, as it stands beside the line. */
+export const TREND_WORDS: Readonly<Record<Trend, string>> = {
+	there: 'there',
+	'closing-in': 'closing in',
+	level: 'level',
+	'further-off': 'further off',
+	'too-few': 'too few days'
+};
+
+const MANY: Readonly<Record<ScoredDrillId, string>> = { unison: 'unisons', interval: 'intervals' };
+
+const SENTENCE: Readonly<Record<Trend, (many: string) => string>> = {
+	there: (many) => `${many} are where they should be`,
+	'closing-in': (many) => `${many} are closing in`,
+	level: (many) => `${many} are level`,
+	'further-off': (many) => `${many} are further off than they were`,
+	'too-few': (many) => `${many} have too few days yet to tell a direction`
+};
+
+/**
+ * The finding over all drills as one sentence, for a page's heading.
+ * @param whose "Your", "Her", or a name with its ending.
+ */
+export function finding(drills: readonly DrillProgress[], whose: string): string {
+	const begun = drills.filter((drill) => drill.points.length > 0);
+	if (begun.length === 0) return 'Nothing measured yet.';
+	const parts = begun.map((drill) => SENTENCE[drill.trend](MANY[drill.drill]));
+	return `${whose} ${parts.join('; ')}.`;
+}
+
+/** Cents with a digit that means something: "0.84", "3.2". */
+export function centsFigure(cents: number): string {
+	return cents < 1 ? cents.toFixed(2) : cents.toFixed(1);
+}
+
+/** "A3" or "A3–C#4"; what was asked, else what was found. */
+export function checkedNotes(check: StringCheck): string {
+	const names = check.notes.length > 0 ? check.notes : check.result.notes.map(({ note }) => note);
+	return names.join('–') || 'no note found';
+}
+
+/** What a string check found, in one sentence. */
+export function checkFinding(check: StringCheck): string {
+	if (check.kind === 'note') return noteFinding(check);
+	const pair = check.result.pairs[0];
+	if (!pair) return 'No beat measurable.';
+	const partials =
+		pair.lowerPartial === pair.upperPartial
+			? `partial ${pair.lowerPartial}`
+			: `partials ${pair.lowerPartial}:${pair.upperPartial}`;
+	if (pair.verdict === 'still') return `Still at ${partials}.`;
+	if (pair.verdict === 'not-measurable' || pair.beatRateHz === null) {
+		return `No beat measurable at ${partials}${pair.reason ? `: ${pair.reason}` : ''}.`.replace(
+			/\.\.$/,
+			'.'
+		);
+	}
+	const range = pair.ci95Hz
+		? `, very likely ${pair.ci95Hz[0].toFixed(2)} to ${pair.ci95Hz[1].toFixed(2)}`
+		: '';
+	return `${pair.beatRateHz.toFixed(2)} beats per second at ${partials}${range}.`;
+}
+
+function noteFinding(check: StringCheck): string {
+	const note = check.result.notes[0];
+	if (!note || note.f1Hz === null) return 'The note was not found.';
+	const cents = note.centsFromEqual;
+	const away =
+		cents === null
+			? ''
+			: `, ${Math.abs(cents).toFixed(1)} cents ${cents < 0 ? 'below' : 'above'} equal temperament`;
+	return `${note.f1Hz.toFixed(2)} Hz${away}.`;
+}
