@@ -1,5 +1,5 @@
 import { bandShape, extractBand, type BandSignal, type ClipSpectrum } from './band';
-import { audibleComponents, type SplitWindow } from './clusters';
+import { audibleComponents, visibleSeconds, type SplitWindow } from './clusters';
 import { chooseOrder, fitNextOrder, refitFrom, type OrderFit, type OrderLimits } from './orders';
 import { intervalRate, unisonRate, type ExpectedPlaces, type RuledRate } from './rate-rule';
 import { fisherSd, FLOOR_HZ, modelHalfWidth, studentQuantile95 } from './rate-width';
@@ -140,10 +140,8 @@ function cleanAnswer(band: BandSignal, order: OrderFit, question: BandQuestion):
 	const verdicts: { verdict: BandVerdict; strength: number }[] = [];
 	for (let i = 0; i < heard.length; i++) {
 		for (let j = i + 1; j < heard.length; j++) {
-			const a = order.fit.components.indexOf(heard[i]);
-			const b = order.fit.components.indexOf(heard[j]);
 			const rate = Math.abs(heard[j].hz - heard[i].hz);
-			const half = Math.hypot(studentQuantile95(freedom) * fisherSd(order, a, b), FLOOR_HZ);
+			const half = Math.hypot(studentQuantile95(freedom) * fisherSd(order, [heard[i]], [heard[j]]), FLOOR_HZ);
 			const strength = Math.min(heard[i].energy, heard[j].energy);
 			verdicts.push({ verdict: cleanVerdict(rate, half, limit, question.kind), strength });
 		}
@@ -194,19 +192,20 @@ function modelAnswer(
 	if (chosen.residualDb > HOPELESS_DB) return done(notMeasurable(SEVERAL));
 	const ruled = ruledRate(band, chosen, question);
 	if (!ruled) {
-		const seconds = (window.to - window.from) / band.rateHz;
-		return done(interval ? notMeasurable(ONE_BY_ONE) : still(1.5 / seconds));
+		if (interval) return done(notMeasurable(ONE_BY_ONE));
+		return done(still(1.5 / visibleSeconds(heard, window)));
 	}
 	const variants = variantRates(clip, band, fits, chosen, question);
 	const near = variants.filter((rate) => rate !== null && agrees(rate, ruled)) as number[];
 	if (near.length < variants.length / 2) return done(notMeasurable(SEVERAL));
-	const index = [ruled.split.low[0], ruled.split.high[0]];
 	const half = modelHalfWidth({
 		ruled,
-		fisherSdHz: strongestPairSd(chosen, heard, index),
+		fisherSdHz: fisherSd(chosen, ruled.split.low, ruled.split.high),
+		rivalRatesHz: ruled.rivals.map(({ rateHz }) => rateHz),
 		variantRatesHz: near,
 		seconds: (window.to - window.from) / band.rateHz
 	});
+	if ((globalThis as any).DBG) console.log("   dbg", question.centreHz.toFixed(1), ruled.by, "rate", ruled.split.rateHz.toFixed(3), "e", ruled.split.energyRateHz.toFixed(3), "sep", ruled.split.separation.toFixed(1), "m", ruled.split.depth.toFixed(2), "cyc", ruled.split.cycles.toFixed(1), "K", chosen.order, chosen.residualDb.toFixed(1), "near", near.length, variants.length, variants.map(v=>v?.toFixed(3)).join(" "), "half", half.toFixed(3));
 	return done(beating(ruled.split.rateHz, half, null, SEVERAL));
 }
 
@@ -273,11 +272,4 @@ function part(band: BandSignal, from: number, to: number): BandSignal {
 		z: band.z.slice(2 * from, 2 * to),
 		startSeconds: band.startSeconds + from / band.rateHz
 	};
-}
-
-function strongestPairSd(order: OrderFit, heard: { hz: number }[], index: number[]): number {
-	const all = order.fit.components;
-	const a = all.findIndex((component) => component.hz === heard[index[0]]?.hz);
-	const b = all.findIndex((component) => component.hz === heard[index[1]]?.hz);
-	return a >= 0 && b >= 0 && a !== b ? fisherSd(order, a, b) : 0;
 }

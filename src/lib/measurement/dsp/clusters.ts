@@ -18,9 +18,9 @@ export interface Split {
 	/** Widths of the groups in hertz. */
 	lowSpreadHz: number;
 	highSpreadHz: number;
-	/** Indices of the components of the lower group. */
-	low: number[];
-	high: number[];
+	/** The groups' components. */
+	low: Component[];
+	high: Component[];
 }
 
 export interface SplitWindow {
@@ -159,8 +159,8 @@ export function describeSplit(low: Component[], high: Component[], window: Split
 		highHz,
 		lowSpreadHz,
 		highSpreadHz,
-		low: low.map((_, i) => i),
-		high: high.map((_, i) => low.length + i)
+		low,
+		high
 	};
 }
 
@@ -173,13 +173,29 @@ export function allSplits(parts: readonly Component[], window: SplitWindow): Spl
 	return splits;
 }
 
-/** Every pair of single components as a split of its own. */
+/**
+ * Every pair of single components as a split of its own, its depth seen within the whole sound:
+ * 2·sqrt(E_i·E_j)/ΣE.
+ */
 export function allPairs(parts: readonly Component[], window: SplitWindow): Split[] {
 	const pairs: Split[] = [];
+	const whole = parts.reduce((sum, part) => sum + windowEnergy(part, window), 0);
 	for (let i = 0; i < parts.length; i++) {
 		for (let j = i + 1; j < parts.length; j++) {
-			pairs.push({ ...describeSplit([parts[i]], [parts[j]], window), low: [i], high: [j] });
+			const two = windowEnergy(parts[i], window) + windowEnergy(parts[j], window);
+			const split = describeSplit([parts[i]], [parts[j]], window);
+			pairs.push({ ...split, depth: (split.depth * two) / whole });
 		}
 	}
 	return pairs;
+}
+
+/** Time from the window's start until the components' sum stays 30 dB below its greatest. */
+export function visibleSeconds(parts: Component[], window: SplitWindow): number {
+	const z = sumOf(parts, window);
+	let max = 0;
+	for (let n = 0; n < z.length; n += 2) max = Math.max(max, z[n] ** 2 + z[n + 1] ** 2);
+	let last = z.length - 2;
+	while (last > 0 && z[last] ** 2 + z[last + 1] ** 2 < 1e-3 * max) last -= 2;
+	return (last / 2 + 1) / window.rateHz;
 }

@@ -22,6 +22,7 @@ export interface OrderLimits {
 
 const QUICK_ITERATIONS = 10;
 const FULL_ITERATIONS = 40;
+const POOR_DB = -20;
 
 function optionsFor(band: BandSignal, iterations: number) {
 	return { rateHz: band.rateHz, iterations, maxHz: band.passHz + 2, minDecayPerSecond: -0.05 };
@@ -117,12 +118,14 @@ export function chooseOrder(band: BandSignal, fits: OrderFit[], limits: OrderLim
 	while (chosen.residualDb > limits.enoughDb) {
 		const next = upTo(chosen.order + 1);
 		if (!next) break;
-		if (chosen.residualDb - next.residualDb >= limits.gainDb) {
+		// While much of the sound is unexplained, small steps count too.
+		const gainDb = chosen.residualDb > POOR_DB ? Math.min(1, limits.gainDb) : limits.gainDb;
+		if (chosen.residualDb - next.residualDb >= gainDb) {
 			chosen = next;
 			continue;
 		}
 		const ahead = upTo(chosen.order + 2);
-		if (!ahead || chosen.residualDb - ahead.residualDb < 2 * limits.gainDb) break;
+		if (!ahead || chosen.residualDb - ahead.residualDb < 2 * gainDb) break;
 		chosen = ahead;
 	}
 	return chosen;

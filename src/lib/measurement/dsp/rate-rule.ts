@@ -16,10 +16,14 @@ export interface RuledRate {
 	by: 'clusters' | 'pair';
 	/** Other rates that can be heard beside it, strongest first. */
 	others: Split[];
+	/** Those heard about as well as the answer: they make it irregular. */
+	rivals: Split[];
 }
 
 const MIN_SEPARATION = 2.5;
-const MIN_DEPTH = 0.15;
+/** The depth of a component 20 dB below the other: what is left out as inaudible. */
+const MIN_DEPTH = 0.2;
+const RIVAL_SHARE = 0.6;
 const MIN_CYCLES = 1.5;
 const AUDIBLE_DB = -20;
 
@@ -37,14 +41,23 @@ export function unisonRate(fit: OrderFit, window: SplitWindow, maxHz: number): R
 	const pairs = allPairs(parts, window)
 		.filter(({ depth, cycles }) => depth >= MIN_DEPTH && cycles >= 1)
 		.sort((a, b) => b.depth - a.depth);
-	if (qualifying.length > 0) {
-		const split = qualifying.reduce((a, b) =>
-			b.separation * b.depth > a.separation * a.depth ? b : a
-		);
-		return { split, by: 'clusters', others: pairs.filter((pair) => !within(pair, split)) };
+	const split = qualifying.reduce<Split | null>(
+		(a, b) => (a && a.separation * a.depth >= b.separation * b.depth ? a : b),
+		null
+	);
+	// A pair that beats more deeply inside one group than the groups do is what is heard.
+	if (split && (pairs.length === 0 || pairs[0].depth <= split.depth)) {
+		const worth = (other: Split): number => other.separation * other.depth;
+		return {
+			split,
+			by: 'clusters',
+			others: pairs.filter((pair) => !within(pair, split)),
+			rivals: qualifying.filter((other) => worth(other) >= RIVAL_SHARE * worth(split))
+		};
 	}
 	if (pairs.length === 0) return null;
-	return { split: pairs[0], by: 'pair', others: pairs.slice(1) };
+	const rivals = pairs.filter(({ depth }) => depth >= RIVAL_SHARE * pairs[0].depth);
+	return { split: pairs[0], by: 'pair', others: pairs.slice(1), rivals };
 }
 
 /** Whether a pair's rate is that of the split, give or take the groups' widths. */
@@ -81,7 +94,7 @@ export function intervalRate(
 			bestScore = score;
 		}
 	}
-	return best && { split: best, by: 'clusters', others: [] };
+	return best && { split: best, by: 'clusters', others: [], rivals: [] };
 }
 
 function nearness(split: Split, expected: ExpectedPlaces | null): number {

@@ -1,5 +1,6 @@
-import type { RuledRate } from './rate-rule';
 import type { OrderFit } from './orders';
+import type { RuledRate } from './rate-rule';
+import type { Component } from './refine';
 
 /** Two-sided 95 % quantile of Student's t. */
 export function studentQuantile95(freedom: number): number {
@@ -13,20 +14,32 @@ export function studentQuantile95(freedom: number): number {
 }
 
 /**
- * Standard deviation, in hertz, of the frequency difference of components i and j of a fit: from
- * the Fisher matrix of damped exponentials in the noise that the residual shows.
+ * Standard deviation, in hertz, of the distance between the energy-weighted centres of two groups
+ * of a fit's components: from the Fisher matrix of damped exponentials in the noise that the
+ * residual shows.
  */
-export function fisherSd(order: OrderFit, i: number, j: number): number {
+export function fisherSd(
+	order: OrderFit,
+	low: readonly Component[],
+	high: readonly Component[]
+): number {
 	const { components, poleCovariance } = order.fit;
 	if (!poleCovariance) return Infinity;
 	const n = components.length;
-	const at = (a: number, b: number): number => poleCovariance[2 * (a * n + b)];
-	const noise = Math.max(
-		order.rest.varianceNear(components[i].hz),
-		order.rest.varianceNear(components[j].hz)
-	);
-	const variance = 0.5 * noise * (at(i, i) + at(j, j) - 2 * at(i, j));
-	return Math.sqrt(Math.max(0, variance)) / (2 * Math.PI);
+	const weight = new Float64Array(n);
+	for (const [group, sign] of [
+		[low, -1],
+		[high, 1]
+	] as const) {
+		const total = group.reduce((sum, part) => sum + part.energy, 0);
+		for (const part of group) weight[components.indexOf(part)] += (sign * part.energy) / total;
+	}
+	let variance = 0;
+	for (let i = 0; i < n; i++) {
+		for (let j = 0; j < n; j++) variance += weight[i] * weight[j] * poleCovariance[2 * (i * n + j)];
+	}
+	const noise = Math.max(...[...low, ...high].map(({ hz }) => order.rest.varianceNear(hz)));
+	return Math.sqrt(Math.max(0, 0.5 * noise * variance)) / (2 * Math.PI);
 }
 
 /** Smallest half-width that is ever stated, in hertz. */
@@ -37,6 +50,8 @@ export interface ModelWidthInput {
 	fisherSdHz: number;
 	/** Rates of the variants of the fit that agree with the answer. */
 	variantRatesHz: number[];
+	/** Rates heard about as well as the answer in the same band. */
+	rivalRatesHz: number[];
 	/** Length heard in seconds. */
 	seconds: number;
 }
@@ -54,8 +69,10 @@ export function modelHalfWidth(input: ModelWidthInput): number {
 			Math.max(1, input.variantRatesHz.length)
 	);
 	const few = split.cycles < 2 ? (by === 'pair' ? 0.4 : 0.2) : 0.06;
+	const rival = Math.max(0, ...input.rivalRatesHz.map((value) => Math.abs(value - rate)));
 	return Math.hypot(
 		2 * input.fisherSdHz,
+		rival,
 		2 * scatter,
 		0.008 * rate,
 		0.2 * Math.min(split.lowSpreadHz, split.highSpreadHz),
