@@ -3,9 +3,10 @@ import { checkSubmission } from '../../drills/submission';
 import type { AttemptSubmission, BlockResult } from '../../drills/types';
 import type { Actor } from '../auth';
 import { database } from '../database';
-import { Attempt, AuditEntry } from '../models';
+import { Attempt } from '../models';
 import { Refusal } from '../refusal';
 import { refreshDay } from './attempt-rollup';
+import { audit, type Deed } from './audit';
 import { contentHash } from './content-hash';
 import { medianWithInterval } from './median-interval';
 
@@ -43,7 +44,7 @@ export async function storeAttempt(
 		async (transaction) => {
 			if (!(await insertOnce(row, transaction))) return repeated(actor, row, transaction);
 			await refreshDay(row, transaction);
-			if (row.scoreFlagged) await audit(actor, row, transaction);
+			if (row.scoreFlagged) await audit(differs(row), transaction);
 			return { ...stored(row), created: true };
 		}
 	);
@@ -54,7 +55,8 @@ type Row = ReturnType<typeof rowOf>;
 function rowOf(actor: Actor, submission: AttemptSubmission, result: BlockResult, now: Date) {
 	const finishedMs = Date.parse(submission.finishedAt);
 	const startedMs = Date.parse(submission.startedAt);
-	if (!(startedMs >= 0 && finishedMs >= 0)) throw new Refusal('invalid', 'The attempt is malformed at startedAt.');
+	if (!(startedMs >= 0 && finishedMs >= 0))
+		throw new Refusal('invalid', 'The attempt is malformed at startedAt.');
 	// A clock that runs ahead does not put work into the future.
 	const aheadMs = Math.max(0, finishedMs - now.getTime());
 	const finishedAt = new Date(finishedMs - aheadMs);
@@ -152,15 +154,12 @@ function stored(row: Pick<Attempt, 'id' | 'serverScore' | 'scoreFlagged' | 'resu
 	return { id, score: serverScore, scoreFlagged, result };
 }
 
-async function audit(actor: Actor, row: Row, transaction: Transaction): Promise<void> {
-	await AuditEntry.create(
-		{
-			actorId: actor.id,
-			action: 'attempt.score_differs',
-			subjectType: 'attempt',
-			subjectId: row.id,
-			detail: { clientScore: row.clientScore, serverScore: row.serverScore, drill: row.drill }
-		},
-		{ transaction }
-	);
+function differs(row: Row): Deed {
+	const { clientScore, serverScore, drill } = row;
+	return {
+		actorId: row.studentId,
+		action: 'attempt.score_differs',
+		subject: { type: 'attempt', id: row.id },
+		detail: { clientScore, serverScore, drill }
+	};
 }

@@ -5,8 +5,8 @@ import { listOwnAttempts } from '$lib/server/services/attempt-reading';
 import { storeAttempt } from '$lib/server/services/attempts';
 import type { RequestHandler } from './$types';
 
-/** A block of ten long trials with every move recorded stays well below this. */
-const LARGEST_ATTEMPT_BYTES = 500_000;
+/** Ten trials with the longest trace that is taken; a usual block has a hundredth of it. */
+const LARGEST_ATTEMPT_BYTES = 1_200_000;
 
 /** Stores an attempt: 201 the first time, 200 with the same answer when it is sent again. */
 export const POST: RequestHandler = async (event) => {
