@@ -3,6 +3,7 @@
  * are passed in.
  */
 import type { ScoredDrillId } from '../drills/types';
+import { TOLERANCE_SETS } from '../acoustics/tolerances';
 import { isSteady } from './mastery';
 import type { CourseRecords } from './records';
 
@@ -102,8 +103,8 @@ function placeOf(records: CourseRecords): { stepId: StepId; partId: PartId } {
 	return open.find(({ partId }) => partId === 'do') ?? open[0] ?? { stepId: 'final', partId: 'do' };
 }
 
-/** The median error of a working tuner's unisons, cents (common practice, no source). */
-const WORKING_UNISON_CENTS = 0.6;
+/** The median error of a working tuner's unisons, cents. */
+const WORKING_UNISON_CENTS = TOLERANCE_SETS.working.unison;
 
 /** Whether the records show that a part is behind the student. */
 export function isDone(records: CourseRecords, stepId: StepId, partId: PartId): boolean {

@@ -1,7 +1,7 @@
 import { INTERVALS, signedBeatHz, type PartialPair } from '../acoustics/intervals';
 import { partialHzFromF1 } from '../acoustics/stiff-string';
-import { ratioFromCents, type BeatsPerSecond, type Hertz } from '../acoustics/units';
-import { temperamentToleranceCents } from './drill-tolerance';
+import { toleranceCents } from '../acoustics/tolerances';
+import { ratioFromCents, type BeatsPerSecond, type Cents, type Hertz } from '../acoustics/units';
 import { countEvents } from './trace';
 import { tunedPiano } from './tuned-piano';
 import type { IntervalTrialResult, IntervalTrialSpec, RawTrial } from './types';
@@ -46,9 +46,15 @@ export function intervalPartialHz(spec: IntervalTrialSpec): Hertz {
 	return partialHzFromF1(partial, tuning.f1Hz(midi), model.inharmonicity(midi));
 }
 
+/** Tolerance of the note that moves, cents of its f_1. */
+export function intervalToleranceCents(spec: IntervalTrialSpec): Cents {
+	const midi = spec.moving === 'low' ? spec.lowMidi : spec.highMidi;
+	return toleranceCents(spec.toleranceSet, 'interval', midi);
+}
+
 /** Signed beats at the ends of the tolerance, low to high, cut off where the interval is beatless. */
 export function intervalToleranceHz(spec: IntervalTrialSpec): readonly [number, number] {
-	const limit = temperamentToleranceCents(spec.toleranceSet);
+	const limit = intervalToleranceCents(spec);
 	const ends = [intervalBeatHz(spec, -limit), intervalBeatHz(spec, limit)].sort((a, b) => a - b);
 	const wide = intervalBeatHz(spec, 0) > 0;
 	return wide ? [Math.max(0, ends[0]), ends[1]] : [ends[0], Math.min(0, ends[1])];
@@ -62,7 +68,7 @@ export function scoreInterval(spec: IntervalTrialSpec, raw: RawTrial): IntervalT
 	const beatHz = intervalBeatHz(spec, raw.committedCents);
 	const targetHz = intervalBeatHz(spec, 0);
 	const toleranceHz = intervalToleranceHz(spec);
-	const toleranceCents = temperamentToleranceCents(spec.toleranceSet);
+	const limitCents = intervalToleranceCents(spec);
 	const side = sideOf(beatHz, targetHz);
 	const rateErrorHz = Math.abs(beatHz) - Math.abs(targetHz);
 	return {
@@ -76,8 +82,8 @@ export function scoreInterval(spec: IntervalTrialSpec, raw: RawTrial): IntervalT
 		side,
 		rightRateWrongSide: side === 'wrong' && withinMirrored(beatHz, toleranceHz),
 		toleranceHz,
-		toleranceCents,
-		inside: side === 'right' && Math.abs(raw.committedCents) <= toleranceCents,
+		toleranceCents: limitCents,
+		inside: side === 'right' && Math.abs(raw.committedCents) <= limitCents,
 		...intervalPair(spec),
 		partialHz: intervalPartialHz(spec),
 		strikes: countEvents(raw, 'strike', 'fixed', 'moving'),

@@ -1,6 +1,6 @@
+import { toleranceCents } from '../acoustics/tolerances';
 import { loudestPartial, unisonAtPartial } from '../acoustics/unison';
 import { ratioFromCents, type Hertz } from '../acoustics/units';
-import { unisonToleranceCents } from './drill-tolerance';
 import { countEvents } from './trace';
 import { tunedPiano } from './tuned-piano';
 import type { RawTrial, UnisonTrialResult, UnisonTrialSpec } from './types';
@@ -33,7 +33,7 @@ export function unisonHeard(spec: UnisonTrialSpec, cents: number) {
  */
 export function scoreUnison(spec: UnisonTrialSpec, raw: RawTrial): UnisonTrialResult {
 	const heard = unisonHeard(spec, raw.committedCents);
-	const toleranceCents = unisonToleranceCents(spec.toleranceSet);
+	const limitCents = toleranceCents(spec.toleranceSet, 'unison', spec.midi);
 	return {
 		drill: 'unison',
 		index: spec.index,
@@ -42,8 +42,8 @@ export function scoreUnison(spec: UnisonTrialSpec, raw: RawTrial): UnisonTrialRe
 		locked: heard.rateHz === 0,
 		partial: heard.partial,
 		partialHz: heard.frequencyHz,
-		toleranceCents,
-		inside: Math.abs(raw.committedCents) <= toleranceCents,
+		toleranceCents: limitCents,
+		inside: Math.abs(raw.committedCents) <= limitCents,
 		strikes: countEvents(raw, 'strike', 'fixed', 'moving'),
 		helps: countEvents(raw, 'help'),
 		checks: 0,
