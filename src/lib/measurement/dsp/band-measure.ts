@@ -41,6 +41,8 @@ const MIN_SNR_DB = 6;
 const TOO_WEAK = 'This partial is too weak here.';
 const TOO_SHORT = 'The sound is too short here.';
 const SEVERAL = 'Several strings move at once here; no single rate stands out.';
+const SWELL =
+	'A slow swell covers everything else here; let the sound ring longer or mute one string.';
 const UNCERTAIN = 'The rate is too uncertain here; let the sound ring longer.';
 const ONE_BY_ONE =
 	'Too close to tell the two notes apart; strike the notes one after the other first.';
@@ -86,7 +88,10 @@ function hasTone(band: BandSignal, first: OrderFit): boolean {
 	const noise = first.rest.variance * (band.z.length / 2);
 	const strongest = first.fit.components[0].energy;
 	const lines = (2 * band.passHz * band.z.length) / 2 / band.rateHz;
-	const threshold = Math.max(10 ** (MIN_SNR_DB / 10) * first.rest.variance * Math.log(lines + 3), 0);
+	const threshold = Math.max(
+		10 ** (MIN_SNR_DB / 10) * first.rest.variance * Math.log(lines + 3),
+		0
+	);
 	// Energy of a component is seen against the noise of one independent line, not of the band.
 	return strongest > Math.max(8 * threshold, 1e-3 * noise);
 }
@@ -141,7 +146,10 @@ function cleanAnswer(band: BandSignal, order: OrderFit, question: BandQuestion):
 	for (let i = 0; i < heard.length; i++) {
 		for (let j = i + 1; j < heard.length; j++) {
 			const rate = Math.abs(heard[j].hz - heard[i].hz);
-			const half = Math.hypot(studentQuantile95(freedom) * fisherSd(order, [heard[i]], [heard[j]]), FLOOR_HZ);
+			const half = Math.hypot(
+				studentQuantile95(freedom) * fisherSd(order, [heard[i]], [heard[j]]),
+				FLOOR_HZ
+			);
 			const strength = Math.min(heard[i].energy, heard[j].energy);
 			verdicts.push({ verdict: cleanVerdict(rate, half, limit, question.kind), strength });
 		}
@@ -191,6 +199,7 @@ function modelAnswer(
 		answer(main, others, question, band, heard, window);
 	if (chosen.residualDb > HOPELESS_DB) return done(notMeasurable(SEVERAL));
 	const ruled = ruledRate(band, chosen, question);
+	if (ruled === 'masked') return done(notMeasurable(SWELL));
 	if (!ruled) {
 		if (interval) return done(notMeasurable(ONE_BY_ONE));
 		return done(still(1.5 / visibleSeconds(heard, window)));
@@ -205,7 +214,6 @@ function modelAnswer(
 		variantRatesHz: near,
 		seconds: (window.to - window.from) / band.rateHz
 	});
-	if ((globalThis as any).DBG) console.log("   dbg", question.centreHz.toFixed(1), ruled.by, "rate", ruled.split.rateHz.toFixed(3), "e", ruled.split.energyRateHz.toFixed(3), "sep", ruled.split.separation.toFixed(1), "m", ruled.split.depth.toFixed(2), "cyc", ruled.split.cycles.toFixed(1), "K", chosen.order, chosen.residualDb.toFixed(1), "near", near.length, variants.length, variants.map(v=>v?.toFixed(3)).join(" "), "half", half.toFixed(3));
 	return done(beating(ruled.split.rateHz, half, null, SEVERAL));
 }
 
@@ -220,7 +228,11 @@ function windowOf(band: BandSignal, question: BandQuestion): SplitWindow {
 	};
 }
 
-function ruledRate(band: BandSignal, fit: OrderFit, question: BandQuestion): RuledRate | null {
+function ruledRate(
+	band: BandSignal,
+	fit: OrderFit,
+	question: BandQuestion
+): RuledRate | 'masked' | null {
 	const window = windowOf(band, question);
 	const maxHz = band.passHz + 2;
 	if (question.kind === 'unison') return unisonRate(fit, window, maxHz);
@@ -230,6 +242,10 @@ function ruledRate(band: BandSignal, fit: OrderFit, question: BandQuestion): Rul
 		highHz: question.expected.highHz + question.centreHz - band.centreHz
 	};
 	return intervalRate(fit, window, maxHz, shifted);
+}
+
+function rateOf(ruled: RuledRate | 'masked' | null): number | null {
+	return ruled === null || ruled === 'masked' ? null : ruled.split.rateHz;
 }
 
 function agrees(rate: number, ruled: RuledRate): boolean {
@@ -253,7 +269,7 @@ function variantRates(
 			fits.push(next);
 		}
 		const fit = fits[order - 1];
-		if (fit) rates.push(ruledRate(band, fit, question)?.split.rateHz ?? null);
+		if (fit) rates.push(rateOf(ruledRate(band, fit, question)));
 	}
 	const skip = Math.round(0.15 * band.rateHz);
 	const samples = band.z.length / 2;
@@ -261,7 +277,7 @@ function variantRates(
 	const early = part(band, 0, Math.round(0.75 * samples));
 	for (const cut of [late, early]) {
 		const fit = refitFrom(cut, chosen.fit.components);
-		if (fit) rates.push(ruledRate(cut, fit, question)?.split.rateHz ?? null);
+		if (fit) rates.push(rateOf(ruledRate(cut, fit, question)));
 	}
 	return rates;
 }

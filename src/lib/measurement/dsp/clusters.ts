@@ -59,7 +59,10 @@ export function audibleComponents(
 		.sort((a, b) => a.hz - b.hz);
 }
 
-function centre(parts: Component[], window: SplitWindow): [hz: number, spread: number, energy: number] {
+function centre(
+	parts: Component[],
+	window: SplitWindow
+): [hz: number, spread: number, energy: number] {
 	let energy = 0;
 	let sum = 0;
 	let squares = 0;
@@ -130,7 +133,10 @@ function turningRate(
 			loudRe += stepRe * Math.sqrt(power * previousPower);
 			loudIm += stepIm * Math.sqrt(power * previousPower);
 		}
-		if (Math.hypot(uRe, uIm) >= VISIBLE_RIPPLE && power > maxPower * 10 ** (VISIBLE_LEVEL_DB / 10)) {
+		if (
+			Math.hypot(uRe, uIm) >= VISIBLE_RIPPLE &&
+			power > maxPower * 10 ** (VISIBLE_LEVEL_DB / 10)
+		) {
 			visible++;
 		}
 		[previousRe, previousIm, previousPower] = [uRe, uIm, power];

@@ -41,7 +41,9 @@ describe('complex matrices', () => {
 			const found = eigenvaluesComplex(a, n);
 			for (const [re, im] of wanted) {
 				const nearest = Math.min(
-					...Array.from({ length: n }, (_, k) => Math.hypot(found[2 * k] - re, found[2 * k + 1] - im))
+					...Array.from({ length: n }, (_, k) =>
+						Math.hypot(found[2 * k] - re, found[2 * k + 1] - im)
+					)
 				);
 				expect(nearest).toBeLessThan(1e-6);
 			}

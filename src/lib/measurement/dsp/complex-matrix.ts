@@ -27,7 +27,8 @@ export function solveComplex(
 		}
 		eliminate(left, right, n, m, k);
 	}
-	for (let i = 0; i < n; i++) scaleRow(right, m, i, left[2 * (i * n + i)], left[2 * (i * n + i) + 1]);
+	for (let i = 0; i < n; i++)
+		scaleRow(right, m, i, left[2 * (i * n + i)], left[2 * (i * n + i) + 1]);
 	return right;
 }
 

@@ -10,7 +10,12 @@ const ITERATIONS = 5;
  * but folds frequencies beyond rate/(2·stride).
  * @returns `order` poles or none when the band is too short
  */
-export function espritPoles(z: Float64Array, rateHz: number, order: number, stride: number): Pole[] {
+export function espritPoles(
+	z: Float64Array,
+	rateHz: number,
+	order: number,
+	stride: number
+): Pole[] {
 	const samples = z.length / 2;
 	const rows = Math.min(MAX_ROWS, Math.floor(samples / (2 * stride)));
 	const width = order + 2;
@@ -113,7 +118,12 @@ function orthonormalise(q: Float64Array, rows: number, width: number): void {
 }
 
 /** Least-squares F with U_lower·F = U_upper, of the first `order` columns. */
-function shiftMatrix(q: Float64Array, rows: number, width: number, order: number): Float64Array | null {
+function shiftMatrix(
+	q: Float64Array,
+	rows: number,
+	width: number,
+	order: number
+): Float64Array | null {
 	const gram = new Float64Array(2 * order * order);
 	const cross = new Float64Array(2 * order * order);
 	for (let i = 0; i + 1 < rows; i++) {

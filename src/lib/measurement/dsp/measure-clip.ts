@@ -250,7 +250,13 @@ function measurePair(
 function toPair(question: PairQuestion, found: BandAnswer, verdict: BandVerdict): PairMeasure {
 	const { lowerPartial, upperPartial, lowHz, highHz } = question;
 	const frequencyHz = (lowHz + highHz) / 2;
-	return { lowerPartial, upperPartial, frequencyHz, ...verdict, windowSeconds: found.windowSeconds };
+	return {
+		lowerPartial,
+		upperPartial,
+		frequencyHz,
+		...verdict,
+		windowSeconds: found.windowSeconds
+	};
 }
 
 function unheard(question: PairQuestion, reason: string): PairMeasure {

@@ -1,10 +1,5 @@
 import { PitchDetector } from 'pitchy';
-import {
-	A4_MIDI,
-	STANDARD_A4_HZ,
-	equalTemperamentHz,
-	ratioFromCents
-} from '../../acoustics/units';
+import { A4_MIDI, STANDARD_A4_HZ, equalTemperamentHz, ratioFromCents } from '../../acoustics/units';
 import { nearestPeak, partialOf, searchComb, type CombMatch, type CombRange } from './comb';
 import { findPeaks, levelSpectrum, type SpectralPeak } from './spectrum';
 import { fitStiffness, readPartials, type StiffnessFit } from './stiffness-fit';

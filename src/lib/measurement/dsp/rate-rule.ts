@@ -30,17 +30,22 @@ const AUDIBLE_DB = -20;
 /**
  * One string group sounding alone: the split of its components into two clear groups with the
  * largest separation times depth; else the strongest pair that completes a cycle visibly.
- * @returns null when nothing completes a cycle
+ * @returns null when nothing completes a cycle, `masked` when a swell too slow to complete one
+ * is much deeper than anything that does
  */
-export function unisonRate(fit: OrderFit, window: SplitWindow, maxHz: number): RuledRate | null {
+export function unisonRate(
+	fit: OrderFit,
+	window: SplitWindow,
+	maxHz: number
+): RuledRate | 'masked' | null {
 	const parts = audibleComponents(fit.fit.components, window, AUDIBLE_DB, maxHz);
 	const qualifying = allSplits(parts, window).filter(
 		({ separation, depth, cycles }) =>
 			separation >= MIN_SEPARATION && depth >= MIN_DEPTH && cycles >= MIN_CYCLES
 	);
-	const pairs = allPairs(parts, window)
-		.filter(({ depth, cycles }) => depth >= MIN_DEPTH && cycles >= 1)
-		.sort((a, b) => b.depth - a.depth);
+	const every = allPairs(parts, window).sort((a, b) => b.depth - a.depth);
+	const pairs = every.filter(({ depth, cycles }) => depth >= MIN_DEPTH && cycles >= 1);
+	const enough = (depth: number): boolean => depth >= RIVAL_SHARE * (every[0]?.depth ?? 0);
 	const split = qualifying.reduce<Split | null>(
 		(a, b) => (a && a.separation * a.depth >= b.separation * b.depth ? a : b),
 		null
@@ -48,6 +53,7 @@ export function unisonRate(fit: OrderFit, window: SplitWindow, maxHz: number): R
 	// A pair that beats more deeply inside one group than the groups do is what is heard.
 	if (split && (pairs.length === 0 || pairs[0].depth <= split.depth)) {
 		const worth = (other: Split): number => other.separation * other.depth;
+		if (!enough(split.depth)) return 'masked';
 		return {
 			split,
 			by: 'clusters',
@@ -56,6 +62,7 @@ export function unisonRate(fit: OrderFit, window: SplitWindow, maxHz: number): R
 		};
 	}
 	if (pairs.length === 0) return null;
+	if (!enough(pairs[0].depth)) return 'masked';
 	const rivals = pairs.filter(({ depth }) => depth >= RIVAL_SHARE * pairs[0].depth);
 	return { split: pairs[0], by: 'pair', others: pairs.slice(1), rivals };
 }

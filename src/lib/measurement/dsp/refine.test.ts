@@ -46,7 +46,9 @@ describe('power sums', () => {
 				}
 				const found = powerSums(size * Math.cos(angle), size * Math.sin(angle), count);
 				const scale = count ** 3;
-				found.forEach((value, i) => expect(Math.abs(value - wanted[i]) / scale).toBeLessThan(1e-11));
+				found.forEach((value, i) =>
+					expect(Math.abs(value - wanted[i]) / scale).toBeLessThan(1e-11)
+				);
 			}
 		}
 	});

@@ -126,7 +126,11 @@ function evaluate(z: Float64Array, energy: number, poles: Pole[], rateHz: number
 	const right = new Float64Array(2 * count);
 	const slopeRight = new Float64Array(2 * count);
 	steps.forEach(([re, im], k) => {
-		[right[2 * k], right[2 * k + 1], slopeRight[2 * k], slopeRight[2 * k + 1]] = correlate(z, re, im);
+		[right[2 * k], right[2 * k + 1], slopeRight[2 * k], slopeRight[2 * k + 1]] = correlate(
+			z,
+			re,
+			im
+		);
 	});
 	const amplitudes = solveComplex(gram, right, count, 1);
 	if (!amplitudes) return null;

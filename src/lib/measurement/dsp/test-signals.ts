@@ -72,7 +72,12 @@ export function stiffTone(spec: ToneSpec): Float32Array {
 			const phase = 2 * Math.PI * uniform();
 			const level = (string.level ?? 1) * (0.7 + 0.6 * uniform());
 			if (hz > 0.45 * sampleRateHz) continue;
-			sines.push({ hz, amplitude: level / n, decayPerSecond: decayPerSecond * (1 + 0.15 * n), phase });
+			sines.push({
+				hz,
+				amplitude: level / n,
+				decayPerSecond: decayPerSecond * (1 + 0.15 * n),
+				phase
+			});
 		}
 		addSines(samples, sampleRateHz, sines, spec.atSeconds ?? 0);
 	}
