@@ -1,0 +1,1 @@
+export { handle, handleError, init } from '$lib/server/hooks';

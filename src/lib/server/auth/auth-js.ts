@@ -1,0 +1,122 @@
+import { CredentialsSignin, SvelteKitAuth } from '@auth/sveltekit';
+import Credentials from '@auth/sveltekit/providers/credentials';
+import { isRedirect, type RequestEvent } from '@sveltejs/kit';
+import { env, usesHttps } from '../env';
+import { log } from '../log';
+import { Refusal } from '../refusal';
+import { actorOfSession, authenticate } from '../services/accounts';
+import type { Actor } from './actor';
+import { SESSION_SECONDS } from './session';
+
+class TooMany extends CredentialsSignin {
+	constructor(readonly sentence: string) {
+		super(sentence);
+	}
+	override code = 'too-many';
+}
+
+async function authorize(given: Partial<Record<string, unknown>>, event: RequestEvent) {
+	const { email, password } = given;
+	if (typeof email !== 'string' || typeof password !== 'string') return null;
+	try {
+		const actor = await authenticate(email, password, event.getClientAddress());
+		event.locals.actor = actor;
+		return actor && { id: actor.id, sessionVersion: actor.sessionVersion };
+	} catch (problem) {
+		// The limit is kept here, not in the form's action: this is the only way in.
+		if (problem instanceof Refusal) throw new TooMany(problem.message);
+		throw problem;
+	}
+}
+
+const auth = SvelteKitAuth(async (event) => ({
+	trustHost: true,
+	secret: env().AUTH_SECRET,
+	useSecureCookies: usesHttps(),
+	session: { strategy: 'jwt', maxAge: SESSION_SECONDS },
+	pages: { signIn: '/sign-in', signOut: '/sign-out', error: '/sign-in' },
+	providers: [
+		Credentials({
+			credentials: { email: {}, password: {} },
+			authorize: (given) => authorize(given, event)
+		})
+	],
+	callbacks: {
+		async jwt({ token, user }) {
+			if (user) {
+				const { sessionVersion } = user as { sessionVersion?: number };
+				return { sub: user.id, sessionVersion };
+			}
+			return (await actorOfSession(token.sub, token.sessionVersion)) ? token : null;
+		}
+	},
+	logger: {
+		error: (problem) => {
+			if (!(problem instanceof CredentialsSignin)) log().error({ reason: problem.message }, 'auth');
+		},
+		warn: (code) => log().warn({ code }, 'auth'),
+		debug: () => {}
+	}
+}));
+
+/** Gives event.locals.auth(), which renews the session's cookie. */
+export const authHandle = auth.handle;
+
+function withForm(event: RequestEvent, fields: Record<string, string>): RequestEvent {
+	const headers = new Headers(event.request.headers);
+	headers.delete('content-length');
+	headers.set('content-type', 'application/x-www-form-urlencoded');
+	const body = new URLSearchParams(fields);
+	const request = new Request(event.request.url, { method: 'POST', headers, body });
+	return Object.assign(Object.create(event), { request }) as RequestEvent;
+}
+
+async function runAuth(run: () => unknown): Promise<void> {
+	try {
+		await run();
+	} catch (outcome) {
+		// Auth.js has set its cookies by now and wants to redirect; where to is the route's decision.
+		if (!isRedirect(outcome)) throw outcome;
+	}
+}
+
+/**
+ * Begins a session for whoever has this address and password, and sets its cookie.
+ * @returns the person, or a sentence why not.
+ */
+export async function beginSession(
+	event: RequestEvent,
+	email: string,
+	password: string
+): Promise<{ actor: Actor; refused?: undefined } | { refused: string }> {
+	event.locals.actor = null;
+	try {
+		const fields = { providerId: 'credentials', email, password, redirectTo: '/' };
+		await runAuth(() => auth.signIn(withForm(event, fields)));
+	} catch (problem) {
+		if (problem instanceof TooMany) return { refused: problem.sentence };
+		if (!(problem instanceof CredentialsSignin)) throw problem;
+	}
+	const { actor } = event.locals;
+	if (actor) return { actor };
+	return { refused: 'This address and password do not belong together.' };
+}
+
+/** Ends this browser's session. */
+export async function endSession(event: RequestEvent): Promise<void> {
+	await runAuth(() => auth.signOut(withForm(event, { redirectTo: '/' })));
+	event.locals.actor = null;
+}
+
+/** A path on this site to go on to, from a form or an address; anything else gives null. */
+export function safePath(path: unknown): string | null {
+	if (typeof path !== 'string' || !path.startsWith('/') || path.length > 500) return null;
+	try {
+		const url = new URL(path, 'http://site.invalid');
+		return url.origin === 'http://site.invalid' && !/^\/[/\\]/.test(path)
+			? url.pathname + url.search
+			: null;
+	} catch {
+		return null;
+	}
+}
