@@ -90,14 +90,14 @@ export async function openMicrophone(listener: MicrophoneListener): Promise<Micr
 	const settings = track.getSettings();
 	let context: AudioContext | null = null;
 	let node: AudioWorkletNode | null = null;
-	let timer: ReturnType<typeof setInterval> | undefined;
+	const watch: { timer?: ReturnType<typeof setInterval> } = {};
 	let closed = false;
 	let lastBlockAt = performance.now();
 
 	const close = () => {
 		if (closed) return;
 		closed = true;
-		clearInterval(timer);
+		clearInterval(watch.timer);
 		node?.port.postMessage('stop');
 		node?.disconnect();
 		for (const each of stream.getTracks()) each.stop();
@@ -126,7 +126,7 @@ export async function openMicrophone(listener: MicrophoneListener): Promise<Micr
 	);
 	lastBlockAt = performance.now();
 	track.addEventListener('ended', () => fail(new MicrophoneError('ended')));
-	timer = setInterval(() => {
+	watch.timer = setInterval(() => {
 		// A hidden tab's timers are slowed down, so lateness counts only while the page is seen.
 		if (document.visibilityState === 'visible' && performance.now() - lastBlockAt > FROZEN_MS) {
 			fail(new MicrophoneError('frozen'));

@@ -105,20 +105,3 @@ export class StrikeDetector {
 		this.frames++;
 	}
 }
-
-/**
- * First strike of a whole clip, in samples; a clip that begins with one, or after less silence than
- * a room needs to be learnt, gives 0.
- */
-export function firstStrike(samples: Float32Array, sampleRateHz: number): number {
-	const detector = new StrikeDetector(sampleRateHz);
-	const strikes: number[] = [];
-	detector.add(samples, (index) => strikes.push(index));
-	if (strikes.length === 0) return 0;
-	// A tone that sounds from the start and is struck again later began at the start.
-	const lead = samples.subarray(0, strikes[0]);
-	let peak = 0;
-	for (const x of samples) peak = Math.max(peak, Math.abs(x));
-	const soundedBefore = lead.some((x) => Math.abs(x) > 0.1 * peak);
-	return soundedBefore ? 0 : strikes[0];
-}

@@ -53,6 +53,11 @@ export class StrikeRecorder {
 		return this.detector.floorDb;
 	}
 
+	/** Seconds of sound taken so far. */
+	get secondsHeard(): number {
+		return this.received / this.sampleRateHz;
+	}
+
 	/** Takes the next samples of the stream; ignored once done. */
 	add(block: Float32Array): RecorderState {
 		if (this.state === 'done') return this.state;

@@ -1,4 +1,5 @@
 import { partialHzFromF1 } from '../../acoustics/stiff-string';
+import { toleranceBeatsHz } from '../../acoustics/tolerances';
 import { centsBetween, equalTemperamentHz, noteName } from '../../acoustics/units';
 import type { Interval95, MeasureResult, NoteMeasure, PairMeasure } from '../../measurement/types';
 import { verdictOf, type Limits } from '../charts/range';
@@ -96,7 +97,8 @@ export function judgedGroup(
 /** Place of a note's partial in hertz and half of its 95 % interval; null when B is not known. */
 function partialWithDoubt(note: NoteMeasure, n: number): { hz: number; doubt: number } | null {
 	const { f1Hz, f1Ci95Hz, inharmonicity, inharmonicityCi95 } = note;
-	if (f1Hz === null || f1Ci95Hz === null || inharmonicity === null || !inharmonicityCi95) return null;
+	if (f1Hz === null || f1Ci95Hz === null || inharmonicity === null || !inharmonicityCi95)
+		return null;
 	const hz = partialHzFromF1(n, f1Hz, inharmonicity);
 	const fromF1 = (n * (f1Ci95Hz[1] - f1Ci95Hz[0])) / 2;
 	const fromB = (hz * (n * n - 1) * (inharmonicityCi95[1] - inharmonicityCi95[0])) / 4;
@@ -123,17 +125,12 @@ export function sideOf(result: MeasureResult, pair: PairMeasure): Side | null {
 	return signed > 0 ? 'wide' : 'narrow';
 }
 
-/** Beats per second of a distance in cents at `frequencyHz`. */
-export function beatsOfCents(cents: number, frequencyHz: number): number {
-	return frequencyHz * (2 ** (cents / 1200) - 1);
-}
-
 /**
  * Rates that count as inside, counted on the target's side; those of a one-sided interval never
  * reach over beatless.
  */
 export function insideRates(target: IntervalTarget, frequencyHz: number): [number, number] {
-	const reach = beatsOfCents(target.toleranceCents, frequencyHz);
+	const reach = toleranceBeatsHz(target.toleranceCents, frequencyHz);
 	const least = target.beatRateHz - reach;
 	return [target.oneSided ? Math.max(0, least) : least, target.beatRateHz + reach];
 }

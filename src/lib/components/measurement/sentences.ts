@@ -115,7 +115,11 @@ export function lead(asked: Asked, source: 'microphone' | 'file', seconds: numbe
 }
 
 /** Lines under a note's frequency. */
-export function noteLines(note: NoteMeasure, targetF1Hz: number | null, pianoName: string): string[] {
+export function noteLines(
+	note: NoteMeasure,
+	targetF1Hz: number | null,
+	pianoName: string
+): string[] {
 	if (note.f1Hz === null) return ['Not found in this sound.'];
 	const lines: string[] = [];
 	const doubt = note.f1Ci95Hz
@@ -140,7 +144,8 @@ export function noteLines(note: NoteMeasure, targetF1Hz: number | null, pianoNam
 export function recordingLines(facts: RecordingFacts, unknown: string[] | null): string[] {
 	const lines: string[] = [];
 	if (facts.aboveRoomDb !== null) lines.push(`${Math.round(facts.aboveRoomDb)} dB above the room.`);
-	if (facts.clipped) lines.push('Overdriven: the loudest moment is cut off. Move the microphone away.');
+	if (facts.clipped)
+		lines.push('Overdriven: the loudest moment is cut off. Move the microphone away.');
 	if (facts.quiet) lines.push('Very quiet: move the microphone nearer, or strike more firmly.');
 	if (unknown === null) lines.push('From a file: what was done to it before is not known.');
 	else if (unknown.length === 0) lines.push('Nothing in the browser touched it.');
@@ -196,7 +201,10 @@ export function remedy(pair: PairMeasure, seconds: number): string {
 export function otherLines(group: PairGroup): string[] {
 	return group.others
 		.filter((p) => p.verdict === 'beating' && p.beatRateHz !== null)
-		.map((p) => `also, weaker, ${rateFigure(p.beatRateHz ?? 0, p.tier === 'about')}: ${likelyLine(p, null)}`);
+		.map(
+			(p) =>
+				`also, weaker, ${rateFigure(p.beatRateHz ?? 0, p.tier === 'about')}: ${likelyLine(p, null)}`
+		);
 }
 
 /** The shore in words, for those who do not see it. */

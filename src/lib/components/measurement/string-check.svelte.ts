@@ -1,7 +1,11 @@
 import { noteName } from '../../acoustics/units';
 import type { PianoId } from '../../drills/catalogue';
 import { AnalysisFailedError, type Analysis, type AnalysisClient } from '../../measurement/client';
-import { AudioRefusedError, MAX_FILE_BYTES, refuseTooLarge } from '../../measurement/formats/audio-refused';
+import {
+	AudioRefusedError,
+	MAX_FILE_BYTES,
+	refuseTooLarge
+} from '../../measurement/formats/audio-refused';
 import type { Microphone, MicrophoneListener } from '../../measurement/microphone';
 import { MicrophoneError, type MicrophoneFaultText } from '../../measurement/microphone-error';
 import type { MicrophoneFacts } from '../../measurement/microphone-facts';

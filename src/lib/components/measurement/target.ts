@@ -1,7 +1,7 @@
 import { intervalBetween, type IntervalId, type PartialPair } from '../../acoustics/intervals';
 import { targetBeat } from '../../acoustics/targets';
+import { toleranceCents } from '../../acoustics/tolerances';
 import type { PianoId } from '../../drills/catalogue';
-import { temperamentToleranceCents, unisonToleranceCents } from '../../drills/drill-tolerance';
 import { tunedPiano } from '../../drills/tuned-piano';
 import type { IntervalTarget } from './judge';
 
@@ -17,18 +17,14 @@ export const TOLERANCE_SET = 'learning';
 
 const TWO_SIDED: readonly IntervalId[] = ['unison', 'octave', 'double-octave', 'twelfth'];
 
-/**
- * Tolerance of an interval in cents by the outermost of its notes: the temperament's in octaves 3
- * to 5, twice that below C3 and in octave 6, four times in octave 7 (common practice, no source).
- */
+/** Tolerance of an interval in cents: the wider of its two notes'. */
 export function intervalToleranceCents(lowMidi: number, highMidi: number): number {
-	const middle = temperamentToleranceCents(TOLERANCE_SET);
-	if (highMidi >= 96) return 4 * middle;
-	return lowMidi < 48 || highMidi >= 84 ? 2 * middle : middle;
+	const of = (midi: number) => toleranceCents(TOLERANCE_SET, 'interval', midi);
+	return Math.max(of(lowMidi), of(highMidi));
 }
 
 /** Tolerance of a unison in cents between its strings. */
-export const unisonTolerance = () => unisonToleranceCents(TOLERANCE_SET);
+export const unisonTolerance = (midi: number) => toleranceCents(TOLERANCE_SET, 'unison', midi);
 
 /** Target of an interval at one pair of partials on one of the shipped pianos. */
 export function intervalTarget(
