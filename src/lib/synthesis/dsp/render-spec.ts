@@ -1,5 +1,5 @@
 import { pianoFromSpec } from '../../acoustics/piano-model';
-import type { RenderSpec, StrikeSpec } from '../../acoustics/render-spec';
+import { SpecError, type RenderSpec, type StrikeSpec } from '../../acoustics/render-spec';
 import { solveTargets, type TargetTuning } from '../../acoustics/targets';
 import { midiFromNoteName, ratioFromCents } from '../../acoustics/units';
 import { limit } from './limiter';
@@ -26,9 +26,17 @@ function lazyTargets(spec: RenderSpec): () => TargetTuning {
 }
 
 function planStrike(spec: RenderSpec, strike: StrikeSpec, targets: () => TargetTuning): VoicePlan {
+	try {
+		return plan(spec, strike, targets);
+	} catch (error) {
+		throw error instanceof RangeError ? new SpecError(error.message) : error;
+	}
+}
+
+function plan(spec: RenderSpec, strike: StrikeSpec, targets: () => TargetTuning): VoicePlan {
 	if ('fork' in strike) return planFork(strike.fork.hz, strike.velocity, spec.sampleRateHz);
 	const midi = midiFromNoteName(strike.note);
-	if (midi === null) throw new RangeError(`"${strike.note}" is not a note`);
+	if (midi === null) throw new SpecError(`"${strike.note}" is not a note`);
 	const stringsF1Hz = strike.strings.map((string) =>
 		'hz' in string ? string.hz : targets().f1Hz(midi) * ratioFromCents(string.cents)
 	);
@@ -50,7 +58,8 @@ function schedule(spec: RenderSpec): { strikes: ScheduledStrike[]; slots: number
 	const slots = new Map<string, number>();
 	const targets = lazyTargets(spec);
 	const strikes = spec.strikes.map((strike) => {
-		const name = 'fork' in strike ? 'fork' : String(midiFromNoteName(strike.note));
+		const name =
+			'fork' in strike ? `fork/${strike.fork.hz}` : String(midiFromNoteName(strike.note));
 		const slot = slots.get(name) ?? slots.size;
 		slots.set(name, slot);
 		const sample = Math.round(strike.atSeconds * spec.sampleRateHz);
@@ -60,17 +69,27 @@ function schedule(spec: RenderSpec): { strikes: ScheduledStrike[]; slots: number
 	return { strikes, slots: slots.size };
 }
 
+/** Largest sample of a clip with noise; the whole clip is turned down to it where need be. */
+const NOISY_PEAK = 0.99;
+
 function addNoise(samples: Float32Array, noise: NonNullable<RenderSpec['noise']>): void {
 	const level = rootMeanSquare(samples) * 10 ** (-noise.snrDb / 20);
-	const hiss = makeNoise(samples.length, level, noise.colour, noise.seed);
-	for (let t = 0; t < samples.length; t += 1) samples[t] = limit(samples[t] + hiss[t]);
+	const sum = makeNoise(samples.length, level, noise.colour, noise.seed);
+	let peak = 0;
+	for (let t = 0; t < sum.length; t += 1) {
+		sum[t] += samples[t];
+		peak = Math.max(peak, Math.abs(sum[t]));
+	}
+	// Limiting would change the ratio that was asked for; turning everything down does not.
+	const factor = peak > NOISY_PEAK ? NOISY_PEAK / peak : 1;
+	for (let t = 0; t < sum.length; t += 1) samples[t] = limit(factor * sum[t]);
 }
 
 /**
  * Renders a specification through the same kernels as the browser's sound engine: mono, within
  * ±1. Noise lies under the whole clip; its level is set against the root mean square of the whole
  * rendered tone. The same specification gives the same samples.
- * Throws RangeError for a note or frequency that cannot be (a parsed specification has none).
+ * Throws SpecError for a string or fork too high for the sample rate.
  */
 export function renderSpec(spec: RenderSpec): Float32Array {
 	const samples = new Float32Array(Math.round(spec.seconds * spec.sampleRateHz));

@@ -1,5 +1,6 @@
 import { HIGHEST_PARTIAL, pianoFromSpec, strikeLevel } from '../../acoustics/piano-model';
 import { partialHzFromF1 } from '../../acoustics/stiff-string';
+import { equalTemperamentHz, ratioFromCents } from '../../acoustics/units';
 import type { BringForward, VoiceSpec } from '../types';
 
 /** Strings a voice can hold: three of the note and one more for a second polarisation. */
@@ -127,26 +128,20 @@ function checkSpec(spec: VoiceSpec): void {
 	}
 }
 
-function addTwin(plan: VoicePlan, spec: VoiceSpec): void {
-	if (!spec.falseBeat) return;
-	const twin = spec.stringsF1Hz.length;
-	plan.twinOf = spec.falseBeat.string;
-	plan.twinRatio = 2 ** (spec.falseBeat.cents / 1200);
-	plan.stringGain[twin] = Math.min(1, Math.max(0, spec.falseBeat.depth));
-	plan.stringSolo[twin] = 1;
-	plan.stringMuted[twin] = plan.stringMuted[plan.twinOf];
+function tooHigh(hz: number, sampleRateHz: number): string {
+	return `${hz} Hz is too high for a sample rate of ${sampleRateHz} Hz`;
 }
 
 /**
- * Works a strike out for a sample rate: which partials sound, how strong, how they decay.
- * Throws RangeError for a note off the keyboard or strings that are not one to three frequencies.
+ * Partials that sound: below the limit also when the string is drawn up to half a semitone above
+ * its place, so that retuning does not change their number.
  */
-export function planVoice(spec: VoiceSpec, sampleRateHz: number): VoicePlan {
-	checkSpec(spec);
-	const piano = pianoFromSpec(spec.piano);
-	const inharmonicity = piano.inharmonicity(spec.midi);
+function partialCount(spec: VoiceSpec, inharmonicity: number, sampleRateHz: number): number {
 	const limitHz = Math.min(AUDIBLE_LIMIT_HZ, HIGHEST_SHARE_OF_RATE * sampleRateHz);
-	const highestF1Hz = Math.max(...spec.stringsF1Hz);
+	const highestF1Hz = Math.max(
+		...spec.stringsF1Hz,
+		equalTemperamentHz(spec.midi) * ratioFromCents(50)
+	);
 	let partials = 0;
 	while (
 		partials < MAX_PARTIALS &&
@@ -154,19 +149,41 @@ export function planVoice(spec: VoiceSpec, sampleRateHz: number): VoicePlan {
 	) {
 		partials += 1;
 	}
+	if (partials === 0) throw new RangeError(tooHigh(highestF1Hz, sampleRateHz));
+	return partials;
+}
+
+/** The plan's strings: frequencies, coupling, mutes and a second polarisation. */
+function planStrings(spec: VoiceSpec, partials: number): VoicePlan {
 	const f1Hz = [...spec.stringsF1Hz];
-	const twin = spec.falseBeat && spec.falseBeat.string < f1Hz.length ? spec.falseBeat : undefined;
-	if (twin) f1Hz.push(f1Hz[twin.string] * 2 ** (twin.cents / 1200));
-	const key = `${spec.midi}/${f1Hz.length}/${partials}`;
-	const plan = emptyPlan(key, partials, f1Hz);
-	const coupled = spec.coupling ?? true;
-	plan.stringSolo.fill(coupled ? 0 : 1);
-	spec.muted?.forEach((muted, s) => {
-		if (s < spec.stringsF1Hz.length) plan.stringMuted[s] = muted ? 1 : 0;
-	});
-	addTwin(plan, { ...spec, falseBeat: twin });
+	const strings = f1Hz.length;
+	const twin = spec.falseBeat && spec.falseBeat.string < strings ? spec.falseBeat : undefined;
+	if (twin) f1Hz.push(f1Hz[twin.string] * ratioFromCents(twin.cents));
+	const plan = emptyPlan(`${spec.midi}/${f1Hz.length}/${partials}`, partials, f1Hz);
+	plan.stringSolo.fill((spec.coupling ?? true) ? 0 : 1);
+	for (let s = 0; s < strings; s += 1) plan.stringMuted[s] = spec.muted?.[s] ? 1 : 0;
+	if (twin) {
+		plan.twinOf = twin.string;
+		plan.twinRatio = ratioFromCents(twin.cents);
+		plan.stringGain[strings] = Math.min(1, Math.max(0, twin.depth));
+		plan.stringSolo[strings] = 1;
+		plan.stringMuted[strings] = plan.stringMuted[twin.string];
+	}
+	return plan;
+}
+
+/**
+ * Works a strike out for a sample rate: which partials sound, how strong, how they decay.
+ * Throws RangeError for a note off the keyboard, strings that are not one to three frequencies, or
+ * a pitch that the sample rate cannot carry.
+ */
+export function planVoice(spec: VoiceSpec, sampleRateHz: number): VoicePlan {
+	checkSpec(spec);
+	const piano = pianoFromSpec(spec.piano);
+	const inharmonicity = piano.inharmonicity(spec.midi);
+	const partials = partialCount(spec, inharmonicity, sampleRateHz);
+	const plan = planStrings(spec, partials);
 	const amplitude = new Float64Array(partials);
-	const hz = new Float64Array(partials);
 	for (let p = 0; p < partials; p += 1) {
 		const tone = piano.tone(spec.midi, p + 1, spec.velocity);
 		plan.stretch[p] = partialHzFromF1(p + 1, 1, inharmonicity);
@@ -174,13 +191,12 @@ export function planVoice(spec: VoiceSpec, sampleRateHz: number): VoicePlan {
 		plan.bridgeRe[p] = tone.bridgePerSecond;
 		plan.bridgeIm[p] = tone.bridgeReactancePerSecond;
 		amplitude[p] = tone.amplitude;
-		hz[p] = plan.stretch[p] * highestF1Hz;
 	}
+	const hz = plan.stretch.map((ratio) => ratio * spec.stringsF1Hz[0]);
 	const factor = emphasis(hz, spec.bringForward);
-	amplitude.forEach((a, p) => (amplitude[p] = a * factor[p]));
+	for (let p = 0; p < partials; p += 1) amplitude[p] *= factor[p];
 	const sounding = spec.stringsF1Hz.filter((_, s) => plan.stringMuted[s] === 0).length;
-	const scale = levelScale(amplitude, plan, Math.max(1, sounding), spec.velocity);
-	setDrive(plan, amplitude, scale);
+	setDrive(plan, amplitude, levelScale(amplitude, plan, Math.max(1, sounding), spec.velocity));
 	plan.onsetSeconds = onsetSeconds(spec.midi);
 	// Bass dampers take longer to stop their strings (common practice, no source; values invented).
 	plan.damperPerSecond = 18 + (40 * (spec.midi - 21)) / 87;
@@ -215,6 +231,7 @@ export function planFork(hz: number, velocity: number, sampleRateHz: number): Vo
 		throw new RangeError('a fork needs a frequency above 0 Hz');
 	const limitHz = HIGHEST_SHARE_OF_RATE * sampleRateHz;
 	const tones = FORK_TONES.filter(([ratio]) => ratio * hz < limitHz);
+	if (tones.length === 0) throw new RangeError(tooHigh(hz, sampleRateHz));
 	const plan = emptyPlan(`fork/${tones.length}`, tones.length, [hz]);
 	plan.stringSolo[0] = 1;
 	const amplitude = Float64Array.from(tones, ([, a]) => a);
