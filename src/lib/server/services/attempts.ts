@@ -93,7 +93,10 @@ function rowOf(actor: Actor, submission: AttemptSubmission, result: BlockResult,
 	};
 }
 
-/** @returns false when the id was already there; waits for a transaction that is adding it. */
+/**
+ * @returns false when the id was already there; waits for a transaction that is adding it. No
+ * constraint is named: of two that arrive together the second may meet either unique one first.
+ */
 async function insertOnce(row: Row, transaction: Transaction): Promise<boolean> {
 	const [rows] = await database().query(
 		`INSERT INTO attempt (id, student_id, drill, engine_version, seed, content_hash, stimulus, device,
@@ -102,7 +105,7 @@ async function insertOnce(row: Row, transaction: Transaction): Promise<boolean> 
 			received_at)
 		VALUES ($1, $2, $3, $4, $5, $6, $7, $8, $9, $10, $11, $12, $13, $14, $15, $16, $17, $18, $19,
 			$20, $21, $22, $23, $24)
-		ON CONFLICT (id) DO NOTHING RETURNING id`,
+		ON CONFLICT DO NOTHING RETURNING id`,
 		{
 			transaction,
 			bind: [

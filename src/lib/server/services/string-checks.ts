@@ -54,7 +54,7 @@ export const stringCheckSchema = z.strictObject({
 	source: z.enum(['microphone', 'file']),
 	result: z.strictObject({
 		notes: z.array(noteMeasure).max(2),
-		pairs: z.array(pairMeasure).max(64),
+		pairs: z.array(pairMeasure).max(128),
 		advice: z.array(sentence).max(20)
 	}),
 	device: z.strictObject({
@@ -85,7 +85,8 @@ export async function storeStringCheck(
 	}
 	const check = { ...parsed.data, id: parsed.data.id.toLowerCase() };
 	const checkedMs = Date.parse(check.checkedAt);
-	if (!(checkedMs >= 0)) throw new Refusal('invalid', 'The string check is malformed at checkedAt.');
+	if (!(checkedMs >= 0))
+		throw new Refusal('invalid', 'The string check is malformed at checkedAt.');
 	const hash = contentHash(check);
 	const [rows] = await database().query(
 		`INSERT INTO string_check (id, student_id, content_hash, kind, notes, source, result, device,
