@@ -1,5 +1,5 @@
 import { toleranceCents } from '../acoustics/tolerances';
-import { loudestPartial, unisonAtPartial } from '../acoustics/unison';
+import { loudestPartial, unisonAtPartial, type UnisonPartial } from '../acoustics/unison';
 import { ratioFromCents, type Hertz } from '../acoustics/units';
 import { countEvents } from './trace';
 import { tunedPiano } from './tuned-piano';
@@ -21,10 +21,14 @@ export function unisonPartial(spec: UnisonTrialSpec): number {
 	return loudestPartial(tunedPiano(spec.piano).model, spec.midi, velocityOf(spec));
 }
 
-/** What the two strings do together at the judged partial. */
-export function unisonHeard(spec: UnisonTrialSpec, cents: number) {
+/** What the two strings do together at a partial, by default the judged one. */
+export function unisonHeard(
+	spec: UnisonTrialSpec,
+	cents: number,
+	partial: number = unisonPartial(spec)
+): UnisonPartial {
 	const { model } = tunedPiano(spec.piano);
-	return unisonAtPartial(model, spec.midi, unisonPartial(spec), unisonStringsHz(spec, cents));
+	return unisonAtPartial(model, spec.midi, partial, unisonStringsHz(spec, cents));
 }
 
 /**
