@@ -94,10 +94,11 @@ function blowIndex(points: readonly Point[]): number {
 /**
  * The line at `radiusPx` from the coast, on the water's side: the coast thickened by a disc of that
  * radius (mathematical dilation), as waterlines on an old chart, then eased over five neighbours.
+ * `fromBlow`: there is no water before the loudest of the first moments.
  */
-export function waterline(points: readonly Point[], radiusPx: number): Point[] {
+export function waterline(points: readonly Point[], radiusPx: number, fromBlow = true): Point[] {
 	const line: Point[] = [];
-	for (let index = blowIndex(points); index < points.length; index += 2) {
+	for (let index = fromBlow ? blowIndex(points) : 0; index < points.length; index += 2) {
 		const x = points[index][0];
 		let highest = Infinity;
 		for (const [otherX, otherY] of points) {
