@@ -45,7 +45,9 @@ export function checkedNotes(check: StringCheck): string {
 /** What a string check found, in one sentence. */
 export function checkFinding(check: StringCheck): string {
 	if (check.kind === 'note') return noteFinding(check);
-	const pair = check.result.pairs[0];
+	// A unison is judged where it beats: its first partial is often locked still.
+	const beating = check.result.pairs.find(({ verdict }) => verdict === 'beating');
+	const pair = (check.kind === 'unison' && beating) || check.result.pairs[0];
 	if (!pair) return 'No beat measurable.';
 	const partials =
 		pair.lowerPartial === pair.upperPartial
