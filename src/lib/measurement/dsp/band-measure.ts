@@ -1,7 +1,13 @@
 import { bandShape, extractBand, type BandSignal, type ClipSpectrum } from './band';
 import { audibleComponents, visibleSeconds, type SplitWindow } from './clusters';
 import { chooseOrder, fitNextOrder, refitFrom, type OrderFit, type OrderLimits } from './orders';
-import { intervalRate, unisonRate, type ExpectedPlaces, type RuledRate } from './rate-rule';
+import {
+	intervalRate,
+	nearExpected,
+	unisonRate,
+	type ExpectedPlaces,
+	type RuledRate
+} from './rate-rule';
 import { fisherSd, FLOOR_HZ, modelHalfWidth, studentQuantile95 } from './rate-width';
 import { whitePeakLimit } from './residual';
 import { beating, notMeasurable, still, type BandVerdict } from './verdict';
@@ -151,7 +157,7 @@ function cleanAnswer(band: BandSignal, order: OrderFit, question: BandQuestion):
 				FLOOR_HZ
 			);
 			const strength = Math.min(heard[i].energy, heard[j].energy);
-			verdicts.push({ verdict: cleanVerdict(rate, half, limit, question.kind), strength });
+			verdicts.push({ verdict: cleanVerdict(rate, half, limit, question), strength });
 		}
 	}
 	verdicts.sort((a, b) => b.strength - a.strength);
@@ -166,8 +172,10 @@ function cleanVerdict(
 	rate: number,
 	half: number,
 	limit: number,
-	kind: 'unison' | 'interval'
+	{ kind, expected }: BandQuestion
 ): BandVerdict {
+	// Two components of one note are not the interval's beat.
+	if (expected && !nearExpected(rate, expected)) return notMeasurable(ONE_BY_ONE);
 	if (rate < Math.max(limit, 1.5 * half)) {
 		return kind === 'unison' && half <= 0.15
 			? still(Math.max(limit, rate + half))

@@ -49,7 +49,9 @@ export function measureClip(
 	const pairs = questionsFor(found, sampleRateHz).flatMap((question) => {
 		if (!clip) return [unheard(question, NO_STRIKE)];
 		if (clipped) return [unheard(question, CLIPPED)];
-		return measurePair(clip, question, options.kind === 'interval' ? 'interval' : 'unison');
+		return options.kind === 'interval'
+			? measurePair(clip, question, 'interval')
+			: unlessFarApart(measurePair(clip, question, 'unison'), question, peaks);
 	});
 	return { notes, pairs, advice };
 }
@@ -245,6 +247,32 @@ function measurePair(
 	return [found.main, ...found.others.slice(0, 3)].map((verdict) =>
 		toPair(question, found, verdict)
 	);
+}
+
+const FAR_APART = 'The strings are too far apart here to beat; bring them nearer first.';
+const BAND_HZ = 20;
+const AUDIBLE_DB = 26;
+
+/**
+ * `still` speaks of the band around the partial: where a second string sounds beyond it, that is
+ * said instead.
+ */
+function unlessFarApart(
+	pairs: PairMeasure[],
+	question: PairQuestion,
+	peaks: readonly SpectralPeak[]
+): PairMeasure[] {
+	if (pairs[0].verdict !== 'still') return pairs;
+	const middle = question.lowHz;
+	const near = peaks.filter(
+		({ frequencyHz }) => Math.abs(frequencyHz - middle) < 0.4 * question.spacingHz
+	);
+	const level = (inside: boolean): number =>
+		near
+			.filter(({ frequencyHz }) => Math.abs(frequencyHz - middle) <= BAND_HZ === inside)
+			.reduce((max, peak) => Math.max(max, peak.levelDb), -Infinity);
+	if (level(false) < level(true) - AUDIBLE_DB) return pairs;
+	return [{ ...pairs[0], ...notMeasurable(FAR_APART) }];
 }
 
 function toPair(question: PairQuestion, found: BandAnswer, verdict: BandVerdict): PairMeasure {

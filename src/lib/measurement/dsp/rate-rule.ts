@@ -113,8 +113,13 @@ function nearness(split: Split, expected: ExpectedPlaces | null): number {
 
 function plausible(split: Split, expected: ExpectedPlaces | null): boolean {
 	if (!expected) return split.separation >= 4;
+	if (!nearExpected(split.rateHz, expected)) return false;
+	return split.rateHz > 3 || split.separation >= 4;
+}
+
+/** Whether a rate is what the notes' own partials lead one to expect. */
+export function nearExpected(rateHz: number, expected: ExpectedPlaces): boolean {
 	const wanted = Math.abs(expected.highHz - expected.lowHz);
-	const error = Math.abs(split.rateHz - wanted);
-	if (split.rateHz > 3) return error <= Math.max(2.5, 0.2 * wanted);
-	return error <= 0.5 && split.separation >= 4;
+	const error = Math.abs(rateHz - wanted);
+	return error <= (rateHz > 3 ? Math.max(2.5, 0.2 * wanted) : 0.5);
 }
