@@ -33,7 +33,7 @@ const LONE_STRING_DECAY_DB: readonly (readonly [Midi, number])[] = [
 const SQUARE_LOSS_DB_PER_HZ2 = (DB_PER_NEPER * 2.7e-4 * (Math.PI / 0.62) ** 2) / 261.63 ** 2;
 
 /** Level of a blow of velocity 1, root mean square of full scale over the window below. */
-const FULL_BLOW_LEVEL = 0.1;
+const FULL_BLOW_LEVEL = 0.09;
 /** The level of a strike is taken over its first seconds. */
 const LEVEL_WINDOW_S = 0.2;
 /** Partials above this are not heard and take no part in the level. */
@@ -107,7 +107,7 @@ function losses(shape: PianoShape, midi: Midi, hz: Hertz, f1Hz: Hertz, phase: nu
 
 /**
  * All partials of a note at one velocity, scaled so that the root mean square of the note with
- * all its strings over the first 0.2 s is velocity^1.5 × 0.1 of full scale, on every note: the
+ * all its strings over the first 0.2 s is velocity^1.5 × 0.09 of full scale, on every note: the
  * strings start in phase and decay together at γ + N·Re η.
  */
 function noteTone(

@@ -1,34 +1,36 @@
 import { factorInPlace, solveFactored } from './cholesky';
+import { enforce, type Row } from './inequalities';
 import { interpolate, interpolateWithin } from './interpolation';
 import { partialStretchCents } from './stiff-string';
 import {
+	CLEAN_OCTAVES,
 	CURVE_PARTIAL,
 	CURVE_WEIGHT,
 	RISING_RUNS,
 	SERIES_WEIGHTS,
 	TEMPERED,
+	type OctaveTypeWeight,
 	type TargetStyle
 } from './target-styles';
-import { A4_MIDI, HIGHEST_MIDI, LOWEST_MIDI, type Cents, type Midi } from './units';
+import {
+	A4_MIDI,
+	HIGHEST_MIDI,
+	LOWEST_MIDI,
+	centsBetween,
+	equalTemperamentHz,
+	type Cents,
+	type Midi
+} from './units';
 
 const NOTES = HIGHEST_MIDI - LOWEST_MIDI + 1;
 /** Keeps the matrix definite where nothing else speaks; far below any effect. */
 const RIDGE = 1e-7;
-/** A constraint counts as met within this many cents. */
-const SLACK = 1e-9;
 
 /** Which partials of which interval a width is about. */
 interface WidthOf {
 	lowerPartial: number;
 	upperPartial: number;
 	semitones: number;
-}
-
-/** Σ coefficient·x = value, or ≥ value for a constraint; x by index from A0. */
-interface Row {
-	index: number[];
-	coefficient: number[];
-	value: number;
 }
 
 /**
@@ -112,9 +114,26 @@ function addSmoothness(
 	}
 }
 
-/** Inequalities as rows Σ c·x ≥ value: runs that rise, fifths narrow and fourths wide. */
-function constraintRows(inharmonicity: readonly number[]): Row[] {
+/** The width of a clean octave of the temperament stays between two limits, in cents. */
+function cleanOctaveRows(type: OctaveTypeWeight, inharmonicity: readonly number[]): Row[] {
 	const rows: Row[] = [];
+	for (let low = CLEAN_OCTAVES.firstLow; low <= CLEAN_OCTAVES.lastLow; low += 1) {
+		const partialHz = type.lowerPartial * equalTemperamentHz(low);
+		const most = centsBetween(partialHz + CLEAN_OCTAVES.mostBeatHz, partialHz);
+		for (const sign of [1, -1]) {
+			const row = widthRow(type, [[low, sign]], inharmonicity);
+			rows.push({ ...row, value: row.value - most });
+		}
+	}
+	return rows;
+}
+
+/**
+ * Inequalities as rows Σ c·x ≥ value: clean octaves in the temperament, runs that rise, fifths
+ * narrow and fourths wide.
+ */
+function constraintRows(style: TargetStyle, inharmonicity: readonly number[]): Row[] {
+	const rows = cleanOctaveRows(style.octaves[0], inharmonicity);
 	const growth = 1.02 * 2 ** (-1 / 12);
 	for (const run of RISING_RUNS) {
 		for (let low = run.firstLow; low < run.lastLow; low += 1) {
@@ -140,54 +159,6 @@ function constraintRows(inharmonicity: readonly number[]): Row[] {
 	return rows;
 }
 
-function valueOf(row: Row, x: Float64Array): number {
-	return row.index.reduce((sum, index, k) => sum + row.coefficient[k] * x[index], 0);
-}
-
-interface ActiveRow {
-	row: Row;
-	/** A⁻¹·row: how the tuning answers to this constraint's force. */
-	response: Float64Array;
-	force: number;
-}
-
-/**
- * Moves `x` to the least-squares optimum under the constraints: dual coordinate ascent
- * (Hildreth 1957) on the rows found violated so far, repeated until no row is violated.
- */
-function enforce(x: Float64Array, factor: Float64Array, rows: readonly Row[]): void {
-	const active = new Map<Row, ActiveRow>();
-	for (let round = 0; round < 100; round += 1) {
-		const violated = rows.filter((row) => row.value - valueOf(row, x) > SLACK);
-		if (violated.length === 0) return;
-		for (const row of violated) {
-			if (active.has(row)) continue;
-			const dense = new Float64Array(NOTES);
-			row.index.forEach((index, k) => {
-				if (index !== A4_MIDI - LOWEST_MIDI) dense[index] += row.coefficient[k];
-			});
-			active.set(row, { row, response: solveFactored(factor, NOTES, dense), force: 0 });
-		}
-		ascend(x, [...active.values()]);
-	}
-}
-
-function ascend(x: Float64Array, active: readonly ActiveRow[]): void {
-	for (let sweep = 0; sweep < 2000; sweep += 1) {
-		let largest = 0;
-		for (const entry of active) {
-			const curvature = valueOf(entry.row, entry.response);
-			const wanted = entry.force + (entry.row.value - valueOf(entry.row, x)) / curvature;
-			const change = Math.max(0, wanted) - entry.force;
-			if (change === 0) continue;
-			entry.force += change;
-			for (let i = 0; i < NOTES; i += 1) x[i] += change * entry.response[i];
-			largest = Math.max(largest, Math.abs(change) * curvature);
-		}
-		if (largest < SLACK / 10) return;
-	}
-}
-
 /**
  * Target tuning of a stiff-stringed piano: cents of f1 above equal temperament for A0 to C8, A4
  * exactly 0. One linear least-squares problem (octave types near beatless, runs of intervals and
@@ -204,8 +175,17 @@ export function solveStretch(inharmonicity: readonly number[], style: TargetStyl
 	pin(matrix, right, A4_MIDI - LOWEST_MIDI);
 	factorInPlace(matrix, NOTES);
 	const x = solveFactored(matrix, NOTES, right);
-	enforce(x, matrix, constraintRows(inharmonicity));
-	return x;
+	const rows = constraintRows(style, inharmonicity);
+	return enforce(x, rows, (row) => solveFactored(matrix, NOTES, denseRow(row)));
+}
+
+/** A row as a vector over all notes; A4 does not move, whatever pulls at it. */
+function denseRow(row: Row): Float64Array {
+	const dense = new Float64Array(NOTES);
+	row.index.forEach((index, k) => {
+		if (index !== A4_MIDI - LOWEST_MIDI) dense[index] += row.coefficient[k];
+	});
+	return dense;
 }
 
 /** Takes an unknown out of the problem at the value 0. */

@@ -11,7 +11,10 @@ export interface OctaveTypeWeight {
 	weight: WeightNodes;
 }
 
-/** A style of stretching: which octave types are kept clean in which register. */
+/**
+ * A style of stretching: which octave types are kept clean in which register. The first is the one
+ * that the temperament's octaves are made of.
+ */
 export interface TargetStyle {
 	name: string;
 	octaves: readonly OctaveTypeWeight[];
@@ -142,6 +145,12 @@ export const RISING_RUNS: readonly Omit<SeriesWeight, 'weight'>[] = [
 	series(5, 2, 16, 41, 60, 0),
 	series(5, 1, 28, 33, 57, 0)
 ];
+
+/**
+ * Octaves of the temperament never beat more than this at the style's own type, however a measured
+ * B scatters. Not reached on smooth stiffness.
+ */
+export const CLEAN_OCTAVES = { firstLow: 53, lastLow: 57, mostBeatHz: 0.18 } as const;
 
 /** Lower notes whose fifths must stay narrow and fourths wide by at least this many cents. */
 export const TEMPERED = { firstLow: 53, lastLow: 62, leastCents: 0.4 } as const;
