@@ -7,7 +7,7 @@ export default {
 	kit: {
 		adapter: adapter({ out: 'build' }),
 		// The index of superforms' adapters pulls in every validator; only zod's is wanted.
-		alias: { 'superforms-zod': 'node_modules/sveltekit-superforms/dist/adapters/zod4.js' },
+		alias: { 'superforms-zod': 'node_modules/sveltekit-superforms/dist/adapters/zod4' },
 		// 'auto' gives nonces on rendered pages. Decoders of compressed audio are WebAssembly, hence
 		// wasm-unsafe-eval; style attributes are used by charts and transitions only.
 		csp: {

@@ -68,7 +68,7 @@ function withForm(event: RequestEvent, fields: Record<string, string>): RequestE
 	headers.set('content-type', 'application/x-www-form-urlencoded');
 	const body = new URLSearchParams(fields);
 	const request = new Request(event.request.url, { method: 'POST', headers, body });
-	return Object.assign(Object.create(event), { request }) as RequestEvent;
+	return Object.create(event, { request: { value: request, enumerable: true } }) as RequestEvent;
 }
 
 async function runAuth(run: () => unknown): Promise<void> {
