@@ -98,6 +98,10 @@ const PLAIN_ERRORS = [
 export async function runCommand(
 	command: (argv: string[]) => unknown | Promise<unknown>
 ): Promise<void> {
+	// A reader that stops early (`| head`) is no fault.
+	process.stdout.on('error', (error: NodeJS.ErrnoException) => {
+		if (error.code !== 'EPIPE') throw error;
+	});
 	try {
 		const result = await command(process.argv.slice(2));
 		if (result === undefined) return;

@@ -1,17 +1,20 @@
+import { existsSync } from 'node:fs';
 import { INTERVALS, customaryPair } from '../lib/acoustics/intervals';
 import {
 	KEYBOARD,
+	isPianoId,
 	pianoFromSpec,
 	type PianoModel,
 	type PianoSpec
 } from '../lib/acoustics/piano-model';
 import { solveTargets, targetBeat } from '../lib/acoustics/targets';
 import { HIGHEST_MIDI, noteName } from '../lib/acoustics/units';
-import { fail, parseCommandLine, readJson, runCommand } from './arguments';
+import { fail, parseCommandLine, pathFromCaller, readJson, runCommand } from './arguments';
 
 /** The piano of `--piano`: a shipped name, 0, or a JSON file. */
 function pianoFromOption(value: string): PianoModel {
-	const isFile = /\.json$/i.test(value);
+	const isName = value === '0' || isPianoId(value);
+	const isFile = !isName && (/\.json$/i.test(value) || existsSync(pathFromCaller(value)));
 	return pianoFromSpec(isFile ? (readJson(value) as PianoSpec) : value);
 }
 
