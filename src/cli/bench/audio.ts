@@ -4,7 +4,7 @@ import { benchLine, quantile, type BenchLine } from './line';
 
 const RATE = 48_000;
 const QUANTUM = 128;
-/** A fifth, a third and a fundamental in the bass-middle: all 40 partials of each lie in range. */
+/** Low enough that all 40 partials of each lie in the audible range: F2, A2, C3. */
 const NOTES = [41, 45, 48] as const;
 
 /** Three strings of a note with all 40 partials, which do not die during the measurement. */
@@ -22,7 +22,11 @@ function fullTrichord(midi: number): VoicePlan {
 	);
 	if (plan.stretch.length !== MAX_PARTIALS) throw new Error('the load must have 40 partials');
 	// A held load: with the real decays partials fall silent and the measure flatters itself.
-	return { ...plan, ownDecay: plan.ownDecay.map(() => 0.05) };
+	return {
+		...plan,
+		ownDecay: plan.ownDecay.map(() => 0.01),
+		bridgeRe: plan.bridgeRe.map((eta) => eta / 1000)
+	};
 }
 
 /** Seconds of processor time per second of sound, the median of several runs. */
@@ -45,7 +49,10 @@ function bankShare(seconds: number, runs: number): number {
 		for (let q = 0; q < quanta; q += 1) bank.process(out);
 	};
 	run(400);
-	return share(seconds, runs, run);
+	const load = share(seconds, runs, run);
+	if (bank.soundingPartials !== NOTES.length * MAX_PARTIALS)
+		throw new Error('partials fell silent');
+	return load;
 }
 
 /** The same number of sinusoids by the language's own sine, undamped and uncoupled. */
@@ -71,20 +78,29 @@ function sineShare(seconds: number, runs: number): number {
 	return share(seconds, runs, run);
 }
 
-/** Longest single render quantum with strikes and retunes going on, as a share of its time. */
-function worstQuantumShare(quanta: number): number {
+/** Time of each render quantum with strikes and retunes going on, ms. */
+function quantumTimes(quanta: number): number[] {
 	const bank = new ToneBank(RATE, NOTES.length);
 	const plans = NOTES.map(fullTrichord);
 	const out = new Float32Array(QUANTUM);
-	const took: number[] = [];
-	for (let q = 0; q < quanta; q += 1) {
+	return Array.from({ length: quanta }, (_, q) => {
 		const start = performance.now();
 		if (q % 200 === 0) plans.forEach((plan, slot) => bank.strike(slot, plan));
 		if (q % 20 === 7) bank.retune(q % 3, 1, plans[q % 3].stringF1Hz[1] * (1 + 0.0001 * (q % 9)));
 		bank.process(out);
-		took.push(performance.now() - start);
-	}
-	return quantile(took.slice(400), 0.99) / 1000 / (QUANTUM / RATE);
+		return performance.now() - start;
+	});
+}
+
+/**
+ * Longest render quantum as a share of its time. The same sequence is run several times and each
+ * quantum counts with its quickest, which leaves out what other programs took.
+ */
+function worstQuantumShare(quanta: number, runs: number): number {
+	quantumTimes(quanta);
+	const passes = Array.from({ length: runs }, () => quantumTimes(quanta));
+	const quickest = passes[0].map((_, q) => Math.min(...passes.map((pass) => pass[q])));
+	return Math.max(...quickest) / 1000 / (QUANTUM / RATE);
 }
 
 /** Lines of the sound kernel: load of three sounding trichords of 40 partials at 48 kHz. */
@@ -99,8 +115,8 @@ export async function lines(quick: boolean): Promise<BenchLine[]> {
 			reference: { name: '360 plain Math.sin oscillators', value: 100 * sines }
 		}),
 		benchLine(
-			'audio kernel, render quantum with strikes and retuning, p99',
-			100 * worstQuantumShare(quick ? 2000 : 8000),
+			'audio kernel, longest render quantum with strikes and retuning',
+			100 * worstQuantumShare(2000, runs),
 			'% of a quantum',
 			{ bar: 100 }
 		)

@@ -53,6 +53,13 @@ export class CoupledVoice implements CellArrays, StringSituation {
 		return this.sounding;
 	}
 
+	/** Number of partials that have not died away. */
+	get soundingPartials(): number {
+		let count = 0;
+		for (let p = 0; p < this.alive.length; p += 1) count += this.alive[p];
+		return count;
+	}
+
 	/** True when a strike of this plan adds to what sounds, false when it starts afresh. */
 	continues(plan: VoicePlan): boolean {
 		return this.sounding && this.plan !== null && this.plan.key === plan.key;

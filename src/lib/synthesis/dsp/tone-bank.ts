@@ -35,6 +35,13 @@ export class ToneBank {
 		return count;
 	}
 
+	/** Number of partials, of all voices, that have not died away. */
+	get soundingPartials(): number {
+		let count = 0;
+		for (const voice of this.voices) count += voice.soundingPartials;
+		return count;
+	}
+
 	/** Strikes voice `slot`; numbers outside the bank are ignored. */
 	strike(slot: number, plan: VoicePlan): void {
 		const voice = this.voices[slot];

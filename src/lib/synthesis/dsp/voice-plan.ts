@@ -11,8 +11,11 @@ export const MAX_PARTIALS = HIGHEST_PARTIAL;
 const HIGHEST_SHARE_OF_RATE = 0.45;
 /** Partials above this are not heard. */
 const AUDIBLE_LIMIT_HZ = 18_000;
-/** Level of a strike is taken over this time, as the piano models take it, in seconds. */
-const LEVEL_WINDOW_S = 0.2;
+/**
+ * Level of a strike is taken over this time, about what the ear adds up, in seconds: the short top
+ * notes then sound as loud as the others without peaks that the limiter would bend.
+ */
+const LEVEL_WINDOW_S = 0.1;
 
 /**
  * All that a kernel needs to sound one strike: numbers only, so that it can be posted to the audio
@@ -80,8 +83,8 @@ function emphasis(hz: Float64Array, forward: BringForward | undefined): Float64A
 }
 
 /**
- * Scale that gives a strike its level: root mean square over the first 0.2 s of `strings` equal
- * strings of these amplitudes, however many the note has, as `strikeLevel` of the piano models.
+ * Scale that gives a strike its level: root mean square over the first 0.1 s of `strings` equal
+ * strings of these amplitudes is `strikeLevel`, however many strings the note has.
  */
 function levelScale(amplitude: Float64Array, plan: VoicePlan, strings: number, velocity: number) {
 	let energy = 0;
