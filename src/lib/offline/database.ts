@@ -25,6 +25,8 @@ export interface BlockInProgress {
 	readonly trials: readonly RawTrial[];
 	/** ISO 8601. */
 	readonly startedAt: string;
+	/** Made with the last trial and never again, so that handing it in twice is handing in the same. */
+	readonly submission: AttemptSubmission | null;
 }
 
 interface Schema extends DBSchema {

@@ -259,7 +259,8 @@ describe('blocks in progress', () => {
 			attemptId: 'a',
 			block: {} as never,
 			trials: [],
-			startedAt: '2026-03-10T12:00:00.000Z'
+			startedAt: '2026-03-10T12:00:00.000Z',
+			submission: null
 		};
 		await store.save(progress);
 		expect(await store.load(ANNA, 'unison')).toEqual(progress);

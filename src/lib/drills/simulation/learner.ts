@@ -1,6 +1,6 @@
 import { createRandom, integer, normal, pick, uniform, type Random } from '../../acoustics/random';
+import { attemptOf, isoTime } from '../attempt';
 import { DEFAULT_OPTIONS, generateBlock } from '../generate';
-import { scoreBlock } from '../score';
 import type { AttemptSubmission, DeviceFacts, ScoredDrillId, ToleranceSetId } from '../types';
 import { tune, type Person } from './controller';
 
@@ -161,18 +161,14 @@ export function simulateAttempt(random: Random, attempt: SimulatedAttempt): Atte
 	const playedMs = trials.reduce((sum, trial) => sum + trial.committedAtMs, 0);
 	// Reading what each trial showed takes time too.
 	const readMs = trials.length * integer(random, 4000, 9000);
-	return {
+	return attemptOf({
 		id,
-		drill,
-		engineVersion: stimulus.engineVersion,
-		seed,
-		stimulus,
+		block: stimulus,
 		trials,
 		device,
-		clientScore: scoreBlock(stimulus, trials).score,
-		startedAt: new Date(attempt.startedMs).toISOString(),
-		finishedAt: new Date(attempt.startedMs + playedMs + readMs).toISOString()
-	};
+		startedAt: isoTime(attempt.startedMs),
+		nowMs: attempt.startedMs + playedMs + readMs
+	});
 }
 
 /** The person after so many blocks of a drill, on a day that is better (< 1) or worse (> 1). */
