@@ -7,6 +7,7 @@ import {
 	coastPoints,
 	levelAt,
 	loudestDb,
+	lowestNear,
 	nearestTo,
 	pathOf,
 	SHORE_RANGE_DB,
@@ -70,6 +71,14 @@ describe('coast', () => {
 	it('ends where a short recording ends', () => {
 		const points = coastPoints(shore, { widthPx: 400, heightPx: 100, seconds: 4 });
 		expect(points.at(-1)?.[0]).toBeCloseTo(200, -1);
+	});
+
+	it('keeps the bottom of a dip narrower than a pixel', () => {
+		const narrow: Shore = { timesS: [0, 1.001, 1.002, 1.003, 4], levelDb: [0, 0, -30, 0, 0] };
+		const points = coastPoints(narrow, { widthPx: 300, heightPx: 106, seconds: 4 });
+		const [x, y] = lowestNear(points, (1.002 / 4) * 300);
+		expect(x).toBeCloseTo(75.15, 6);
+		expect(y).toBeCloseTo(106 - (16 / SHORE_RANGE_DB) * 100, 6);
 	});
 
 	it('makes paths', () => {

@@ -71,16 +71,34 @@ export function coastPoints(shore: Shore, options: CoastOptions): Point[] {
 	if (count === 0) return [];
 	const lastS = shore.timesS[count - 1];
 	const steps = Math.max(1, Math.round(widthPx / STEP_PX));
+	const levels = sampled(shore, steps, seconds);
 	const points: Point[] = [];
 	for (let step = 0; step <= steps; step++) {
-		const timeS = (step / steps) * seconds;
-		if (timeS > lastS + seconds / steps) break;
-		const level = levelAt(shore, timeS);
+		if ((step / steps) * seconds > lastS + seconds / steps) break;
+		const level = levels[step];
 		const height = (level - topDb + SHORE_RANGE_DB) / SHORE_RANGE_DB;
 		const clamped = Math.min(1, Math.max(LEAST_HEIGHT, Number.isFinite(height) ? height : 0));
 		points.push([(step / steps) * widthPx, heightPx - clamped * (heightPx - marginPx)]);
 	}
 	return points;
+}
+
+/**
+ * Levels at the steps of the drawing. The bottom of a dip narrower than a step would be missed by
+ * reading between samples, so each local minimum is put at the step nearest to it.
+ */
+function sampled(shore: Shore, steps: number, seconds: number): number[] {
+	const levels = Array.from({ length: steps + 1 }, (_, step) =>
+		levelAt(shore, (step / steps) * seconds)
+	);
+	const { timesS, levelDb } = shore;
+	for (let index = 1; index < Math.min(timesS.length, levelDb.length) - 1; index++) {
+		const level = levelDb[index];
+		if (level > levelDb[index - 1] || level >= levelDb[index + 1]) continue;
+		const step = Math.round((timesS[index] / seconds) * steps);
+		if (step >= 0 && step <= steps) levels[step] = Math.min(levels[step], level);
+	}
+	return levels;
 }
 
 /** Index of the highest point among the first few: the blow, before which there is no water. */
@@ -146,6 +164,17 @@ export function nearestTo(points: readonly Point[], x: number): Point {
 	for (const point of points)
 		if (nearest === null || Math.abs(point[0] - x) < Math.abs(nearest[0] - x)) nearest = point;
 	return nearest ?? [x, 0];
+}
+
+/**
+ * Where the land is lowest within `reachPx` of `x`: a knot's place at the bottom of its dip. The point
+ * (x, 0) when there is no coast.
+ */
+export function lowestNear(points: readonly Point[], x: number, reachPx = 4): Point {
+	let lowest = nearestTo(points, x);
+	for (const point of points)
+		if (Math.abs(point[0] - x) <= reachPx && point[1] > lowest[1]) lowest = point;
+	return [x, lowest[1]];
 }
 
 /** Points moved down by `byPx`. */

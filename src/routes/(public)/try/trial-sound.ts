@@ -34,7 +34,7 @@ export function revealOf(trial: OddOneTrialSpec): TrialReveal {
 	);
 	const seconds = TONE_MS / 1000;
 	const shores = voices.map((voice): Shore => {
-		const { timesS, levelDb, quietestS } = partialEnvelope([voice], partialHz, seconds, 600);
+		const { timesS, levelDb, quietestS } = partialEnvelope([voice], partialHz, seconds, 1200);
 		return { timesS, levelDb, beatsS: quietestS };
 	});
 	const odd = voices[trial.answer].stringsF1Hz;
