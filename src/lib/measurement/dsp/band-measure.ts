@@ -6,7 +6,8 @@ import {
 	nearExpected,
 	unisonRate,
 	type ExpectedPlaces,
-	type RuledRate
+	type RuledRate,
+	type Unruled
 } from './rate-rule';
 import { fisherSd, FLOOR_HZ, modelHalfWidth, studentQuantile95 } from './rate-width';
 import { whitePeakLimit } from './residual';
@@ -154,10 +155,15 @@ function cleanAnswer(band: BandSignal, order: OrderFit, question: BandQuestion):
 			const rate = Math.abs(heard[j].hz - heard[i].hz);
 			const half = Math.hypot(
 				studentQuantile95(freedom) * fisherSd(order, [heard[i]], [heard[j]]),
+				order.order > 2 ? (rate * seconds < 2 ? 0.4 : 0.06) / seconds : 0,
 				FLOOR_HZ
 			);
 			const strength = Math.min(heard[i].energy, heard[j].energy);
-			verdicts.push({ verdict: cleanVerdict(rate, half, limit, question), strength });
+			const fading = Math.abs(heard[j].decayPerSecond - heard[i].decayPerSecond);
+			// One is gone before a beat is complete: locked strings, or as good as locked.
+			const locked = 2 * Math.PI * rate <= fading;
+			const least = locked ? Math.max(limit, rate + half) : limit;
+			verdicts.push({ verdict: cleanVerdict(rate, half, least, question), strength });
 		}
 	}
 	verdicts.sort((a, b) => b.strength - a.strength);
@@ -208,6 +214,7 @@ function modelAnswer(
 	if (chosen.residualDb > HOPELESS_DB) return done(notMeasurable(SEVERAL));
 	const ruled = ruledRate(band, chosen, question);
 	if (ruled === 'masked') return done(notMeasurable(SWELL));
+	if (ruled === 'unclear') return done(notMeasurable(SEVERAL));
 	if (!ruled) {
 		if (interval) return done(notMeasurable(ONE_BY_ONE));
 		return done(still(1.5 / visibleSeconds(heard, window)));
@@ -240,7 +247,7 @@ function ruledRate(
 	band: BandSignal,
 	fit: OrderFit,
 	question: BandQuestion
-): RuledRate | 'masked' | null {
+): RuledRate | Unruled | null {
 	const window = windowOf(band, question);
 	const maxHz = band.passHz + 2;
 	if (question.kind === 'unison') return unisonRate(fit, window, maxHz);
@@ -252,8 +259,8 @@ function ruledRate(
 	return intervalRate(fit, window, maxHz, shifted);
 }
 
-function rateOf(ruled: RuledRate | 'masked' | null): number | null {
-	return ruled === null || ruled === 'masked' ? null : ruled.split.rateHz;
+function rateOf(ruled: RuledRate | Unruled | null): number | null {
+	return ruled === null || typeof ruled === 'string' ? null : ruled.split.rateHz;
 }
 
 function agrees(rate: number, ruled: RuledRate): boolean {

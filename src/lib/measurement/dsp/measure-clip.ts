@@ -265,7 +265,7 @@ function unlessFarApart(
 	if (pairs[0].verdict !== 'still') return pairs;
 	const middle = question.lowHz;
 	const near = peaks.filter(
-		({ frequencyHz }) => Math.abs(frequencyHz - middle) < 0.4 * question.spacingHz
+		({ frequencyHz }) => Math.abs(frequencyHz - middle) < 0.5 * question.spacingHz
 	);
 	const level = (inside: boolean): number =>
 		near

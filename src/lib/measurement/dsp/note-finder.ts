@@ -11,6 +11,8 @@ const SEARCH_CENTS = 60;
 const COMB_PARTIALS = 16;
 const FIT_PARTIALS = 20;
 const MIN_FOUND = 3;
+/** Of the partials that could be there; chance peaks of noise reach about a quarter. */
+const MIN_SHARE = 0.35;
 
 /** The spectrum's peaks while the tone is fresh: 0.1 to about 1.4 s after the strike. */
 export function tonePeaks(
@@ -45,7 +47,7 @@ export function findNote(
 	const match = searchComb(peaks, range);
 	if (!match) return null;
 	const possible = Math.min(COMB_PARTIALS, Math.floor(range.highestHz / range.lowF1Hz));
-	const needed = Math.min(MIN_FOUND, possible);
+	const needed = Math.min(possible, Math.max(MIN_FOUND, Math.ceil(MIN_SHARE * possible)));
 	return match.found >= needed && match.score > 0 ? match : null;
 }
 

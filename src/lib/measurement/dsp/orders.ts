@@ -10,6 +10,11 @@ export interface OrderFit {
 	/** Residual energy re the band's energy, dB. */
 	residualDb: number;
 	rest: ResidualSpectrum;
+	/**
+	 * Components that nearly cancel each other: their energies together far exceed the band's, so
+	 * they say nothing about strings.
+	 */
+	degenerate: boolean;
 }
 
 export interface OrderLimits {
@@ -23,6 +28,7 @@ export interface OrderLimits {
 const QUICK_ITERATIONS = 10;
 const FULL_ITERATIONS = 40;
 const POOR_DB = -20;
+const DEGENERATE_SHARE = 10;
 
 function optionsFor(band: BandSignal, iterations: number) {
 	return { rateHz: band.rateHz, iterations, maxHz: band.passHz + 2, minDecayPerSecond: -0.05 };
@@ -96,7 +102,14 @@ function describeFit(band: BandSignal, fit: PoleFit): OrderFit {
 	const rest = residualSpectrum(residualOf(band.z, fit, band.rateHz), band.rateHz, band.passHz);
 	const total = energyOf(band.z);
 	const residualDb = 10 * Math.log10((fit.residualEnergy + 1e-16 * total) / (total + 1e-300));
-	return { order: fit.components.length, fit, residualDb, rest };
+	const parts = fit.components.reduce((sum, part) => sum + part.energy, 0);
+	return {
+		order: fit.components.length,
+		fit,
+		residualDb,
+		rest,
+		degenerate: parts > DEGENERATE_SHARE * total
+	};
 }
 
 /**
@@ -120,12 +133,12 @@ export function chooseOrder(band: BandSignal, fits: OrderFit[], limits: OrderLim
 		if (!next) break;
 		// While much of the sound is unexplained, small steps count too.
 		const gainDb = chosen.residualDb > POOR_DB ? Math.min(1, limits.gainDb) : limits.gainDb;
-		if (chosen.residualDb - next.residualDb >= gainDb) {
+		if (!next.degenerate && chosen.residualDb - next.residualDb >= gainDb) {
 			chosen = next;
 			continue;
 		}
 		const ahead = upTo(chosen.order + 2);
-		if (!ahead || chosen.residualDb - ahead.residualDb < 2 * gainDb) break;
+		if (!ahead || ahead.degenerate || chosen.residualDb - ahead.residualDb < 2 * gainDb) break;
 		chosen = ahead;
 	}
 	return chosen;

@@ -20,10 +20,15 @@ export interface RuledRate {
 	rivals: Split[];
 }
 
+/** Why there is no rate although the sound is not still. */
+export type Unruled = 'masked' | 'unclear';
+
 const MIN_SEPARATION = 2.5;
 /** The depth of a component 20 dB below the other: what is left out as inaudible. */
 const MIN_DEPTH = 0.2;
 const RIVAL_SHARE = 0.6;
+/** A ripple this deep that completes a cycle forbids to call the sound still. */
+const UNCLEAR_DEPTH = 0.1;
 const MIN_CYCLES = 1.5;
 const AUDIBLE_DB = -20;
 
@@ -31,13 +36,13 @@ const AUDIBLE_DB = -20;
  * One string group sounding alone: the split of its components into two clear groups with the
  * largest separation times depth; else the strongest pair that completes a cycle visibly.
  * @returns null when nothing completes a cycle, `masked` when a swell too slow to complete one
- * is much deeper than anything that does
+ * is much deeper than anything that does, `unclear` when only a shallow ripple completes one
  */
 export function unisonRate(
 	fit: OrderFit,
 	window: SplitWindow,
 	maxHz: number
-): RuledRate | 'masked' | null {
+): RuledRate | Unruled | null {
 	const parts = audibleComponents(fit.fit.components, window, AUDIBLE_DB, maxHz);
 	const qualifying = allSplits(parts, window).filter(
 		({ separation, depth, cycles }) =>
@@ -61,7 +66,10 @@ export function unisonRate(
 			rivals: qualifying.filter((other) => worth(other) >= RIVAL_SHARE * worth(split))
 		};
 	}
-	if (pairs.length === 0) return null;
+	if (pairs.length === 0) {
+		const unclear = every.some(({ depth, cycles }) => depth >= UNCLEAR_DEPTH && cycles >= 1);
+		return unclear ? 'unclear' : null;
+	}
 	if (!enough(pairs[0].depth)) return 'masked';
 	const rivals = pairs.filter(({ depth }) => depth >= RIVAL_SHARE * pairs[0].depth);
 	return { split: pairs[0], by: 'pair', others: pairs.slice(1), rivals };
