@@ -1,28 +1,19 @@
-import { coincidentPairs } from '../../acoustics/intervals';
-import { centsBetween, equalTemperamentHz, noteName } from '../../acoustics/units';
-import type { MeasureOptions, MeasureResult, NoteMeasure, PairMeasure } from '../types';
+import { noteName } from '../../acoustics/units';
+import type { MeasureOptions, MeasureResult, PairMeasure } from '../types';
 import { clipSpectrum, type ClipSpectrum } from './band';
-import { measureBand, type BandAnswer } from './band-measure';
-import { partialOf, type CombMatch, type Stiffness } from './comb';
-import { detectNote, findNote, fitNote, HIGHEST_HZ, tonePeaks } from './note-finder';
+import type { BandAnswer } from './band-answer';
+import { measureBand } from './band-measure';
+import { describeNote, findNotes, type FoundNote } from './found-notes';
+import { detectNote, tonePeaks } from './note-finder';
+import { questionsFor, type PairQuestion } from './pair-questions';
 import type { SpectralPeak } from './spectrum';
-import type { StiffnessFit } from './stiffness-fit';
 import { clippedShare, findStrike, type Strike } from './strike';
 import { notMeasurable, type BandVerdict } from './verdict';
 
 const MAX_SECONDS = 8;
-const UNISON_PARTIALS = 8;
-const INTERVAL_PARTIALS = 16;
 const CLIPPED_SHARE = 2e-4;
 const CLIPPED = 'The recording is driven into its limit; set the input lower and strike again.';
 const NO_STRIKE = 'No struck tone was heard.';
-
-/** A note found in the clip (or not). */
-interface FoundNote {
-	midi: number;
-	match: CombMatch | null;
-	fit: StiffnessFit | null;
-}
 
 /**
  * Measures a clip of one struck note, one unison or one interval.
@@ -84,49 +75,6 @@ function namedNotes(
 	return midi === null ? [] : [midi];
 }
 
-/** Finds the notes and fits them; in an interval each from partials that it has for itself. */
-function findNotes(peaks: SpectralPeak[], midis: number[], sampleRateHz: number): FoundNote[] {
-	const matches = midis.map((midi) => findNote(peaks, midi, sampleRateHz));
-	return midis.map((midi, i) => {
-		const match = matches[i];
-		const other = matches.length === 2 ? matches[1 - i] : null;
-		const skip = other ? (_n: number, hz: number) => meets(other, hz) : undefined;
-		return { midi, match, fit: match && fitNote(peaks, match, sampleRateHz, skip) };
-	});
-}
-
-/** Whether a frequency lies too near a partial of another string to be read beside it. */
-function meets(other: Stiffness, hz: number): boolean {
-	const n = Math.max(1, Math.round(hz / other.f0Hz));
-	return [n - 1, n, n + 1].some(
-		(m) => m > 0 && Math.abs(partialOf(other, m) - hz) < Math.max(6, 0.012 * hz)
-	);
-}
-
-function describeNote({ midi, match, fit }: FoundNote): NoteMeasure {
-	const note = noteName(midi);
-	if (!match || !fit) {
-		return {
-			note,
-			f1Hz: null,
-			f1Ci95Hz: null,
-			inharmonicity: null,
-			inharmonicityCi95: null,
-			centsFromEqual: null
-		};
-	}
-	const f1 = 2 * fit.f1Sd;
-	const b = 2 * fit.inharmonicitySd;
-	return {
-		note,
-		f1Hz: fit.f1Hz,
-		f1Ci95Hz: [fit.f1Hz - f1, fit.f1Hz + f1],
-		inharmonicity: fit.inharmonicity,
-		inharmonicityCi95: [Math.max(0, fit.inharmonicity - b), fit.inharmonicity + b],
-		centsFromEqual: centsBetween(fit.f1Hz, equalTemperamentHz(midi))
-	};
-}
-
 function adviceFor(samples: Float32Array, strike: Strike | null, found: FoundNote[]): string[] {
 	const advice: string[] = [];
 	if (!strike) return [NO_STRIKE];
@@ -140,67 +88,6 @@ function adviceFor(samples: Float32Array, strike: Strike | null, found: FoundNot
 		}
 	}
 	return advice;
-}
-
-/** A pair of partials to be measured. */
-interface PairQuestion {
-	lowerPartial: number;
-	upperPartial: number;
-	lowHz: number;
-	highHz: number;
-	spacingHz: number;
-	/** Both notes' own places are known. */
-	known: boolean;
-}
-
-function questionsFor(found: FoundNote[], sampleRateHz: number): PairQuestion[] {
-	const highest = Math.min(HIGHEST_HZ, 0.45 * sampleRateHz);
-	const strings = found.map(stringOf);
-	if (found.length === 1) return unisonQuestions(strings[0], highest);
-	const [low, high] = strings;
-	return coincidentPairs(found[0].midi, found[1].midi, INTERVAL_PARTIALS)
-		.map(({ lowerPartial, upperPartial }) => ({
-			lowerPartial,
-			upperPartial,
-			lowHz: partialOf(low, lowerPartial),
-			highHz: partialOf(high, upperPartial),
-			spacingHz: spacingAround(low, lowerPartial, high, upperPartial),
-			known: found.every(({ fit }) => fit !== null)
-		}))
-		.filter(({ lowHz, highHz }) => Math.max(lowHz, highHz) < highest);
-}
-
-function unisonQuestions(string: Stiffness, highest: number): PairQuestion[] {
-	const questions: PairQuestion[] = [];
-	for (let n = 1; n <= UNISON_PARTIALS; n++) {
-		const hz = partialOf(string, n);
-		if (hz >= highest) break;
-		questions.push({
-			lowerPartial: n,
-			upperPartial: n,
-			lowHz: hz,
-			highHz: hz,
-			spacingHz: string.f0Hz,
-			known: true
-		});
-	}
-	return questions;
-}
-
-/** The best knowledge of a note: its fit, else its comb, else equal temperament. */
-function stringOf({ midi, match, fit }: FoundNote): Stiffness {
-	return fit ?? match ?? { f0Hz: equalTemperamentHz(midi), inharmonicity: 0 };
-}
-
-/** Distance from the meeting place to the nearest partial that is not of the pair. */
-function spacingAround(low: Stiffness, p: number, high: Stiffness, q: number): number {
-	const middle = (partialOf(low, p) + partialOf(high, q)) / 2;
-	let spacing = Infinity;
-	for (let n = 1; n <= p + 2; n++) {
-		if (n !== p) spacing = Math.min(spacing, Math.abs(partialOf(low, n) - middle));
-		if (n !== q) spacing = Math.min(spacing, Math.abs(partialOf(high, n) - middle));
-	}
-	return spacing;
 }
 
 interface StruckClip {
