@@ -50,7 +50,10 @@ const check = (pairs: PairMeasure[], over: Partial<StringCheck> = {}): StringChe
 describe('finding', () => {
 	it('names each drill that was begun', () => {
 		expect(finding([drill({}), drill({ drill: 'interval', trend: 'there' })], 'Your')).toBe(
-			'Your unisons are closing in; intervals are where they should be.'
+			'Your unisons are closing in; intervals come out within tolerance.'
+		);
+		expect(finding([drill({}), drill({ drill: 'interval' })], 'Your')).toBe(
+			'Your unisons and intervals are closing in.'
 		);
 		expect(finding([drill({ points: [] })], 'Your')).toBe('Nothing measured yet.');
 	});

@@ -12,23 +12,32 @@ export const TREND_WORDS: Readonly<Record<Trend, string>> = {
 
 const MANY: Readonly<Record<ScoredDrillId, string>> = { unison: 'unisons', interval: 'intervals' };
 
-const SENTENCE: Readonly<Record<Trend, (many: string) => string>> = {
-	there: (many) => `${many} are where they should be`,
-	'closing-in': (many) => `${many} are closing in`,
-	level: (many) => `${many} are level`,
-	'further-off': (many) => `${many} are further off than they were`,
-	'too-few': (many) => `${many} have too few days yet to tell a direction`
+const SENTENCE: Readonly<Record<Trend, string>> = {
+	there: 'come out within tolerance',
+	'closing-in': 'are closing in',
+	level: 'stay where they are',
+	'further-off': 'are further off than they were',
+	'too-few': 'have too few days yet to tell'
 };
 
 /**
  * The finding over all drills as one sentence, for a page's heading.
- * @param whose "Your", "Her", or a name with its ending.
+ * @param whose "Your", or a name with its ending.
  */
 export function finding(drills: readonly DrillProgress[], whose: string): string {
 	const begun = drills.filter((drill) => drill.points.length > 0);
 	if (begun.length === 0) return 'Nothing measured yet.';
-	const parts = begun.map((drill) => SENTENCE[drill.trend](MANY[drill.drill]));
+	const [first, second] = begun;
+	if (second && first.trend === second.trend) {
+		return `${whose} ${MANY[first.drill]} and ${MANY[second.drill]} ${SENTENCE[first.trend]}.`;
+	}
+	const parts = begun.map((drill) => `${MANY[drill.drill]} ${SENTENCE[drill.trend]}`);
 	return `${whose} ${parts.join('; ')}.`;
+}
+
+/** "Jory’s", "Wes’". */
+export function possessive(name: string): string {
+	return `${name}${/[sxz]$/i.test(name) ? '’' : '’s'}`;
 }
 
 /** Cents with a digit that means something: "0.84", "3.2". */

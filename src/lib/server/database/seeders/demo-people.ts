@@ -2,7 +2,7 @@
  * The people of the demonstration: one studio, its admin, two instructors, six students. All of them,
  * their names and what they did are invented.
  */
-import type { LEARNER_PROFILES } from '../../../drills/simulation/learner';
+import { LEARNER_PROFILES, type LearnerProfile } from '../../../drills/simulation/learner';
 import type { Role } from '../../auth';
 
 export interface DemoPerson {
@@ -36,7 +36,7 @@ export const COLLEAGUE = person(
 );
 
 export interface DemoStudent extends DemoPerson {
-	profile: keyof typeof LEARNER_PROFILES;
+	profile: LearnerProfile;
 	seed: number;
 	/** Days before today on which this student stops for now. */
 	awayDays: number;
@@ -49,35 +49,48 @@ const student = (
 	course: Pick<DemoStudent, 'profile' | 'seed' | 'awayDays'>
 ): DemoStudent => ({ ...person(key, name, 'student', password), ...course });
 
+/** Works often and gets there late: slow beats first, thirds and sixths last. */
+const PATIENT: LearnerProfile = {
+	thresholdHz: [1.8, 0.35],
+	weber: [0.42, 0.2],
+	care: [0.08, 0.5],
+	handCents: 0.3,
+	lapse: 0.1,
+	asks: 0.3,
+	learningBlocks: 22,
+	daysAWeek: 4,
+	blocksADay: 1.8
+};
+
 export const STUDENTS: readonly DemoStudent[] = [
 	student('jory', 'Jory Copperthwick', 'one-string-at-a-time-52', {
-		profile: 'steady',
-		seed: 2101,
+		profile: PATIENT,
+		seed: 202,
 		awayDays: 0
 	}),
 	student('mirabel', 'Mirabel Dunnock', 'the-beat-slows-down-17', {
-		profile: 'gifted',
+		profile: LEARNER_PROFILES.gifted,
 		seed: 2202,
 		awayDays: 1
 	}),
 	student('ansel', 'Ansel Featherlow', 'wide-fourth-narrow-fifth-9', {
-		profile: 'quick',
-		seed: 2303,
+		profile: LEARNER_PROFILES.steady,
+		seed: 303,
 		awayDays: 0
 	}),
 	student('sunniva', 'Sunniva Marlock', 'a-hair-down-then-up-40', {
-		profile: 'slow',
-		seed: 2404,
-		awayDays: 2
+		profile: LEARNER_PROFILES.slow,
+		seed: 404,
+		awayDays: 0
 	}),
 	student('corin', 'Corin Oddershaw', 'stops-at-the-first-quiet-3', {
-		profile: 'stuck',
-		seed: 2505,
+		profile: LEARNER_PROFILES.stuck,
+		seed: 202,
 		awayDays: 0
 	}),
 	student('edda', 'Edda Thornquill', 'back-again-next-week-88', {
-		profile: 'irregular',
-		seed: 2606,
+		profile: LEARNER_PROFILES.irregular,
+		seed: 404,
 		awayDays: 9
 	})
 ];
@@ -158,7 +171,7 @@ export const REMARKS: readonly {
 		daysAgo: 1,
 		about: 'interval',
 		seen: false,
-		text: 'Your fifths are better than you think. Leave them alone when they roll slowly, and spend the time on the thirds.'
+		text: 'Your fifths and fourths are close now. Leave them alone when they roll slowly, and spend the time on thirds and sixths: go for the rate, not for quiet.'
 	},
 	{
 		student: 'edda',

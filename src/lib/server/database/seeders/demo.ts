@@ -1,6 +1,6 @@
 import { QueryTypes } from 'sequelize';
 import { createRandom } from '../../../acoustics/random';
-import { LEARNER_PROFILES, simulateLearner, uuidFrom } from '../../../drills/simulation/learner';
+import { simulateLearner, uuidFrom } from '../../../drills/simulation/learner';
 import type { MeasureResult } from '../../../measurement/types';
 import type { Actor } from '../../auth';
 import { hashPassword } from '../../auth/password';
@@ -135,7 +135,7 @@ async function seedAttempts(student: DemoStudent, people: People, endMs: number)
 		seed: student.seed,
 		startMs: endDayMs - WEEKS * 7 * DAY_MS,
 		weeks: WEEKS + 1,
-		profile: LEARNER_PROFILES[student.profile],
+		profile: student.profile,
 		untilMs: endMs - student.awayDays * DAY_MS
 	});
 	for (const attempt of attempts) {
