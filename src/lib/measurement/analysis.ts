@@ -44,13 +44,17 @@ function shoresOf(tone: Float32Array, sampleRateHz: number, result: MeasureResul
 	return shores;
 }
 
-/** Measures one clip: 8 to 192 kHz, a strike somewhere in it, at most 8 s from it used. */
+/**
+ * Measures one clip: 8 to 192 kHz, a strike somewhere in it, at most 8 s from it used.
+ * @param strikeSample where the strike is, when the recorder already knows
+ */
 export function analyseSamples(
 	samples: Float32Array,
 	sampleRateHz: number,
-	options: MeasureOptions
+	options: MeasureOptions,
+	strikeSample?: number
 ): Analysis {
-	const strike = findStrike(samples, sampleRateHz)?.sample ?? 0;
+	const strike = strikeSample ?? findStrike(samples, sampleRateHz)?.sample ?? 0;
 	const result = measureClip(samples, sampleRateHz, options);
 	const seconds = Math.min(SHORE_SECONDS, options.seconds ?? SHORE_SECONDS);
 	const tone = samples.subarray(strike, strike + Math.round(seconds * sampleRateHz));

@@ -4,7 +4,7 @@ import type { MeasureOptions } from './types';
 
 /** What the page asks; buffers are transferred. */
 export type AnalysisRequest = { id: number; options: MeasureOptions } & (
-	{ samples: Float32Array; sampleRateHz: number } | { bytes: Uint8Array }
+	{ samples: Float32Array; sampleRateHz: number; strikeSample: number } | { bytes: Uint8Array }
 );
 
 export type AnalysisReply =
@@ -18,7 +18,7 @@ async function answer(request: AnalysisRequest): Promise<AnalysisReply> {
 		const analysis =
 			'bytes' in request
 				? await analyseFile(request.bytes, options)
-				: analyseSamples(request.samples, request.sampleRateHz, options);
+				: analyseSamples(request.samples, request.sampleRateHz, options, request.strikeSample);
 		return { id, analysis };
 	} catch (error) {
 		if (error instanceof AudioRefusedError) {

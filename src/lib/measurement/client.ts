@@ -1,26 +1,17 @@
 import type { Analysis } from './analysis';
 import type { AnalysisReply, AnalysisRequest } from './analysis.worker';
+import { AnalysisFailedError } from './client-error';
 import { AudioRefusedError } from './formats/audio-refused';
+import type { StrikeClip } from './strike-recorder';
 import type { MeasureOptions } from './types';
 
+export { AnalysisFailedError } from './client-error';
 export type { Analysis, PairShore } from './analysis';
-
-/** Thrown when a measurement does not come back; the message is for the person. */
-export class AnalysisFailedError extends Error {
-	constructor(message = 'The measurement broke off. Try once more; the sound itself may be fine.') {
-		super(message);
-		this.name = 'AnalysisFailedError';
-	}
-}
 
 /** Measures in a thread of its own, so that the page stays answering. */
 export interface AnalysisClient {
-	/** Measures samples; the array is copied, so the caller may keep it for another go. */
-	analyseSamples(
-		samples: Float32Array,
-		sampleRateHz: number,
-		options: MeasureOptions
-	): Promise<Analysis>;
+	/** Measures a recorded strike; its samples are copied, so the caller may keep them. */
+	analyseClip(clip: StrikeClip, options: MeasureOptions): Promise<Analysis>;
 	/** @throws AudioRefusedError when the file is not accepted */
 	analyseFile(bytes: Uint8Array<ArrayBuffer>, options: MeasureOptions): Promise<Analysis>;
 	close(): void;
@@ -83,9 +74,9 @@ export function createAnalysisClient(
 		});
 
 	return {
-		analyseSamples(samples, sampleRateHz, options) {
+		analyseClip({ samples, sampleRateHz, strikeSample }, options) {
 			const copy = samples.slice();
-			return ask({ samples: copy, sampleRateHz, options }, [copy.buffer]);
+			return ask({ samples: copy, sampleRateHz, strikeSample, options }, [copy.buffer]);
 		},
 		analyseFile: (bytes, options) => ask({ bytes, options }, [bytes.buffer]),
 		close: () => stop(new AnalysisFailedError('The measurement was stopped.'))

@@ -13,6 +13,7 @@ const LEAST_LEVEL_DB = -60;
 const SETTLE_SECONDS = 0.4;
 /** One strike is not found twice: its attack climbs for some hundredths of a second. */
 const HOLD_SECONDS = 0.15;
+const LOOK_AWAY_SECONDS = 0.1;
 
 /** Level of a root mean square in dB re full scale; −120 for silence. */
 export function levelDb(meanSquare: number): number {
@@ -61,6 +62,7 @@ export class StrikeDetector {
 	private inFrame = 0;
 	private frames = 0;
 	private holdUntil = 0;
+	private struck = false;
 
 	constructor(sampleRateHz: number) {
 		this.frameLength = Math.max(1, Math.round(sampleRateHz * FRAME_SECONDS));
@@ -69,6 +71,11 @@ export class StrikeDetector {
 	/** Level of the room in dB re full scale. */
 	get floorDb(): number {
 		return this.plain.floorDb;
+	}
+
+	/** Takes nothing for a strike in the next tenth of a second: the edges of a hole click. */
+	lookAway(): void {
+		this.holdUntil = this.frames + Math.round(LOOK_AWAY_SECONDS / FRAME_SECONDS);
 	}
 
 	/**
@@ -97,9 +104,10 @@ export class StrikeDetector {
 		const ready = this.frames * FRAME_SECONDS >= SETTLE_SECONDS && this.frames >= this.holdUntil;
 		if (ready && (this.plain.jumpsTo(plainDb) || this.bright.jumpsTo(brightDb))) {
 			this.holdUntil = this.frames + Math.round(HOLD_SECONDS / FRAME_SECONDS);
+			this.struck = true;
 			onStrike(this.frames * this.frameLength);
 		}
-		const learning = this.holdUntil === 0;
+		const learning = !this.struck;
 		this.plain.remember(plainDb, learning);
 		this.bright.remember(brightDb, learning);
 		this.frames++;

@@ -69,6 +69,29 @@ describe('StrikeRecorder', () => {
 		}
 	);
 
+	it.each([0.5, 2, 3.7])('gives a strike up for a hole of 10 ms at %f s', async (at) => {
+		const { samples } = await clipOf('grand-two-c3-mf-shift080-l');
+		const stream = room(14, -75, [
+			[1, samples],
+			[8.5, samples]
+		]);
+		const from = Math.round((1 + at) * RATE);
+		stream.fill(0, from, from + RATE / 100);
+		const recorder = new StrikeRecorder(RATE, 4);
+		const states: string[] = [];
+		for (let i = 0; i < stream.length; i += BLOCK) {
+			const state = recorder.add(stream.subarray(i, i + BLOCK));
+			if (state !== states.at(-1)) states.push(state);
+		}
+		expect(recorder.holes).toBe(1);
+		expect(states).toEqual(['quiet-first', 'waiting', 'ringing', 'waiting', 'ringing', 'done']);
+		const clip = recorder.clip();
+		expect(clip?.restarts).toBe(0);
+		expect(
+			clip && recordingFacts(clip.samples, RATE, clip.strikeSample).aboveRoomDb
+		).toBeGreaterThan(20);
+	});
+
 	it('hears nothing in a silent or an evenly noisy room', () => {
 		for (const db of [-110, -60, -30]) {
 			const { clip, states } = record(room(10, db, []));

@@ -5,6 +5,13 @@ const SKIP_SECONDS = 0.1;
 /** Kept from before the strike, so that the meter sees the room and finds the onset itself. */
 export const LEAD_SECONDS = 0.25;
 
+/**
+ * A busy computer fills what it missed with exact zeros, 10 ms or so. A tone passes through zero but
+ * never stays there; a run this long inside one that is louder than this is a hole.
+ */
+const HOLE_SAMPLES = 96;
+const HOLE_LEAST_PEAK = 0.001;
+
 /** `quiet-first`: learning the room; `waiting`: for a strike; `ringing`: recording; `done`. */
 export type RecorderState = 'quiet-first' | 'waiting' | 'ringing' | 'done';
 
@@ -35,6 +42,12 @@ export class StrikeRecorder {
 	private skip: number;
 	private strikeAt = -1;
 	private restarts = 0;
+	private zeros = 0;
+	/** largest magnitude lately, sinking by half in about 10 ms */
+	private peak = 0;
+
+	/** Strikes given up because a piece of the sound was missing. */
+	holes = 0;
 
 	/** @param seconds time kept from the strike on, 1 to 8 */
 	constructor(
@@ -64,11 +77,17 @@ export class StrikeRecorder {
 		const skipped = Math.min(this.skip, block.length);
 		this.skip -= skipped;
 		const samples = skipped > 0 ? block.subarray(skipped) : block;
+		let hole = false;
 		for (let i = 0; i < samples.length; i++) {
 			this.ring[(this.received + i) % this.ring.length] = samples[i];
+			hole = this.isHole(samples[i]) || hole;
 		}
 		this.received += samples.length;
 		this.detector.add(samples, (index) => this.struck(index));
+		if (hole) {
+			this.detector.lookAway();
+			if (this.state === 'ringing') this.giveUp();
+		}
 		if (this.state === 'quiet-first' && this.received > 0.4 * this.sampleRateHz) {
 			this.state = 'waiting';
 		}
@@ -88,6 +107,23 @@ export class StrikeRecorder {
 			strikeSample: this.strikeAt - from,
 			restarts: this.restarts
 		};
+	}
+
+	private isHole(x: number): boolean {
+		if (x !== 0) {
+			this.zeros = 0;
+			this.peak = Math.max(Math.abs(x), 0.9985 * this.peak);
+			return false;
+		}
+		return ++this.zeros === HOLE_SAMPLES && this.peak > HOLE_LEAST_PEAK;
+	}
+
+	/** Back to waiting for another strike. */
+	private giveUp(): void {
+		this.holes++;
+		this.strikeAt = -1;
+		this.restarts = 0;
+		this.state = 'waiting';
 	}
 
 	private struck(index: number): void {

@@ -18,10 +18,15 @@ export function centsFrom(cents: number): string {
 	return `${figure} cents ${cents > 0 ? 'above' : 'below'}`;
 }
 
-/** Two significant digits of a small dimensionless number, e.g. 0.00031. */
-export function stiffnessFigure(b: number): string {
+/**
+ * Inharmonicity, a small dimensionless number, to the digit in which it is uncertain (at most five
+ * significant ones); two significant digits when the uncertainty is not known.
+ */
+export function stiffnessFigure(b: number, halfWidth = 0): string {
 	if (!(b > 0)) return '0';
-	return b.toFixed(Math.max(0, 1 - Math.floor(Math.log10(b))));
+	const first = -Math.floor(Math.log10(b));
+	const doubt = halfWidth > 0 ? -Math.floor(Math.log10(halfWidth)) : first + 1;
+	return b.toFixed(Math.min(first + 4, Math.max(first + 1, doubt)));
 }
 
 const ORDINALS = ['th', 'st', 'nd', 'rd'];

@@ -132,10 +132,9 @@ export function noteLines(
 	if (note.inharmonicity === null) lines.push('Inharmonicity not found');
 	else {
 		const ci = note.inharmonicityCi95;
-		const likely = ci
-			? `, very likely ${stiffnessFigure(Math.max(0, ci[0]))} to ${stiffnessFigure(ci[1])}`
-			: '';
-		lines.push(`Inharmonicity ${stiffnessFigure(note.inharmonicity)}${likely}`);
+		const figure = (b: number) => stiffnessFigure(b, ci ? (ci[1] - ci[0]) / 2 : 0);
+		const likely = ci ? `, very likely ${figure(ci[0])} to ${figure(ci[1])}` : '';
+		lines.push(`Inharmonicity ${figure(note.inharmonicity)}${likely}`);
 	}
 	return lines;
 }

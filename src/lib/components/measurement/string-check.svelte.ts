@@ -1,6 +1,7 @@
 import { noteName } from '../../acoustics/units';
 import type { PianoId } from '../../drills/catalogue';
-import { AnalysisFailedError, type Analysis, type AnalysisClient } from '../../measurement/client';
+import type { Analysis, AnalysisClient } from '../../measurement/client';
+import { AnalysisFailedError } from '../../measurement/client-error';
 import {
 	AudioRefusedError,
 	MAX_FILE_BYTES,
@@ -33,7 +34,7 @@ export interface Finding {
 export type Stage =
 	| { name: 'choosing' }
 	| { name: 'opening' }
-	| { name: 'listening'; heard: 'quiet-first' | 'waiting' | 'ringing' }
+	| { name: 'listening'; heard: 'quiet-first' | 'waiting' | 'ringing'; holes: number }
 	| { name: 'measuring'; what: 'strike' | 'file' }
 	| { name: 'found'; finding: Finding }
 	| { name: 'fault'; text: MicrophoneFaultText }
@@ -41,6 +42,8 @@ export type Stage =
 	| { name: 'no-strike'; floorDb: number };
 
 const NO_STRIKE_SECONDS = 60;
+/** Strikes that may be lost to a busy computer before the page says that it is no use. */
+const MOST_HOLES = 4;
 
 /** The string check's course: choose, listen, measure, show. Sound stays in this object's memory. */
 export class StringCheck {
@@ -98,7 +101,7 @@ export class StringCheck {
 			}
 			this.microphone = opened;
 			recorder = new StrikeRecorder(opened.facts.sampleRateHz, this.seconds);
-			this.stage = { name: 'listening', heard: 'quiet-first' };
+			this.stage = { name: 'listening', heard: 'quiet-first', holes: 0 };
 			for (const block of early) this.hear(recorder, block);
 		} catch (error) {
 			if (run === this.run) this.fail(error);
@@ -166,10 +169,12 @@ export class StringCheck {
 			if (!clip) return;
 			this.lastClip = { clip, facts };
 			void this.measureClip(run);
+		} else if (recorder.holes > MOST_HOLES) {
+			this.fail(new MicrophoneError('gap'));
 		} else if (state === 'waiting' && recorder.secondsHeard > NO_STRIKE_SECONDS) {
 			this.begin({ name: 'no-strike', floorDb: recorder.floorDb });
 		} else if (state !== this.stage.heard) {
-			this.stage = { name: 'listening', heard: state };
+			this.stage = { name: 'listening', heard: state, holes: recorder.holes };
 		}
 	}
 
@@ -179,11 +184,7 @@ export class StringCheck {
 		const asked = this.asked;
 		try {
 			const client = await this.tools.client();
-			const analysis = await client.analyseSamples(
-				clip.samples,
-				clip.sampleRateHz,
-				this.options(asked)
-			);
+			const analysis = await client.analyseClip(clip, this.options(asked));
 			if (run !== this.run) return;
 			const { restarts } = clip;
 			this.show({ asked, source: 'microphone', analysis, microphone: facts, restarts });
