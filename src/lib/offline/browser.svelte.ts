@@ -3,7 +3,7 @@ import type { AttemptSubmission } from '../drills/types';
 import { createBlockStore, type BlockStore } from './block-store';
 import { openOfflineDatabase, type OfflineDatabase, type OutboxEntry } from './database';
 import { createOutbox, type FlushReport, type Outbox, type StoredAttempt } from './outbox';
-import { databaseOutboxStore, memoryOutboxStore } from './outbox-store';
+import { databaseOutboxStore, memoryOutboxStore, type OutboxStore } from './outbox-store';
 
 /**
  * The browser's outbox and what it has to say for itself. Pages read `outboxStatus`; nothing here
@@ -45,22 +45,25 @@ function database(): Promise<OfflineDatabase> {
 	return connection;
 }
 
+function outboxOver(store: OutboxStore): Outbox {
+	return createOutbox({
+		store,
+		fetch: (...request) => fetch(...request),
+		now: () => Date.now(),
+		random: () => Math.random()
+	});
+}
+
+/** From here on attempts are kept only as long as this page is open; the pages say so. */
+function keepInMemory(): Promise<Outbox> {
+	outboxStatus.lasting = false;
+	outbox = Promise.resolve(outboxOver(memoryOutboxStore()));
+	return outbox;
+}
+
 /** The kept outbox, or one in memory where the browser has no lasting store. */
 function openOutbox(): Promise<Outbox> {
-	outbox ??= database()
-		.then(() => databaseOutboxStore(database))
-		.catch(() => {
-			outboxStatus.lasting = false;
-			return memoryOutboxStore();
-		})
-		.then((store) =>
-			createOutbox({
-				store,
-				fetch: (...request) => fetch(...request),
-				now: () => Date.now(),
-				random: () => Math.random()
-			})
-		);
+	outbox ??= database().then(() => outboxOver(databaseOutboxStore(database)), keepInMemory);
 	return outbox;
 }
 
@@ -73,7 +76,12 @@ export const blockStore: BlockStore = {
 
 /** Keeps an attempt; it is the server's only after a flush. */
 export async function enqueueAttempt(userId: string, submission: AttemptSubmission): Promise<void> {
-	await (await openOutbox()).enqueue(userId, submission);
+	try {
+		await (await openOutbox()).enqueue(userId, submission);
+	} catch {
+		// A full disk, or storage taken away meanwhile.
+		await (await keepInMemory()).enqueue(userId, submission);
+	}
 	await refreshOutbox(userId);
 }
 
