@@ -35,8 +35,8 @@ export interface CurveChart {
 type XY = { x: number; y: number };
 const DAY_MS = 86_400_000;
 
-/** Draws the curve in a canvas. `still` leaves out every transition. */
-export function drawCurve(canvas: HTMLCanvasElement, data: CurveData, still: boolean): CurveChart {
+/** Draws the curve in a canvas. */
+export function drawCurve(canvas: HTMLCanvasElement, data: CurveData): CurveChart {
 	let current = data;
 	const colour = (name: string) =>
 		getComputedStyle(canvas).getPropertyValue(`--${name}`).trim() || 'currentColor';
@@ -62,13 +62,13 @@ export function drawCurve(canvas: HTMLCanvasElement, data: CurveData, still: boo
 	const chart = new Chart<'scatter', XY[]>(canvas, {
 		type: 'scatter',
 		data: { datasets: datasets(current, colour) },
-		options: options(current, colour, still),
+		options: options(current, colour),
 		plugins: [band]
 	});
 
 	const renew = () => {
 		chart.data.datasets = datasets(current, colour);
-		chart.options = options(current, colour, still);
+		chart.options = options(current, colour);
 		chart.update('none');
 	};
 	return {
@@ -120,14 +120,15 @@ const topOf = (data: CurveData) =>
 		data.tolerance
 	);
 
-function options(data: CurveData, colour: Colour, still: boolean) {
+function options(data: CurveData, colour: Colour) {
 	const times = [...data.points, ...data.medians].map(({ atMs }) => atMs);
 	const first = times.length ? Math.min(...times) : 0;
 	const last = times.length ? Math.max(...times) : DAY_MS;
 	const font = { family: "'Ysabeau Office Variable', sans-serif", size: 15, weight: 500 };
 	const ticks = { color: colour('ink-soft'), font };
 	return {
-		animation: still ? (false as const) : { duration: 480 },
+		// All marks appear together: nothing is drawn on.
+		animation: false as const,
 		responsive: true,
 		maintainAspectRatio: false,
 		scales: {
