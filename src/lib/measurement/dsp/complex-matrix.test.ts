@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { createNoise } from './test-signals';
+import { createNoise } from '../testing/signals';
 import {
 	eigenvaluesComplex,
 	invertComplex,

@@ -1,15 +1,17 @@
-import { centsBetween, equalTemperamentHz, noteName } from '../../acoustics/units';
+import { centsBetween, equalTemperamentHz, noteName, ratioFromCents } from '../../acoustics/units';
 import type { NoteMeasure } from '../types';
 import { partialOf, type CombMatch, type Stiffness } from './comb';
-import { findNote, fitNote } from './note-finder';
+import { findNote, fitNote, HIGHEST_HZ } from './note-finder';
 import type { SpectralPeak } from './spectrum';
-import type { StiffnessFit } from './stiffness-fit';
+import { readPartials, type StiffnessFit } from './stiffness-fit';
 
 /** A note found in the clip (or not). */
 export interface FoundNote {
 	midi: number;
 	match: CombMatch | null;
 	fit: StiffnessFit | null;
+	/** Peak of the first partial, where too few partials are there for a fit. */
+	firstPartialHz: number | null;
 }
 
 /** Finds the notes and fits them; in an interval each from partials that it has for itself. */
@@ -23,8 +25,18 @@ export function findNotes(
 		const match = matches[i];
 		const other = matches.length === 2 ? matches[1 - i] : null;
 		const skip = other ? (_n: number, hz: number) => meets(other, hz) : undefined;
-		return { midi, match, fit: match && fitNote(peaks, match, sampleRateHz, skip) };
+		const fit = match && fitNote(peaks, match, sampleRateHz, skip);
+		return { midi, match, fit, firstPartialHz: match && firstPartial(peaks, match, skip) };
 	});
+}
+
+function firstPartial(
+	peaks: SpectralPeak[],
+	match: CombMatch,
+	skip?: (n: number, hz: number) => boolean
+): number | null {
+	const reading = readPartials(peaks, match, 1, HIGHEST_HZ, skip)[0];
+	return reading?.frequencyHz ?? null;
 }
 
 /** Whether a frequency lies too near a partial of another string to be read beside it. */
@@ -36,18 +48,9 @@ function meets(other: Stiffness, hz: number): boolean {
 }
 
 /** The note as the result states it. */
-export function describeNote({ midi, match, fit }: FoundNote): NoteMeasure {
+export function describeNote({ midi, fit, firstPartialHz }: FoundNote): NoteMeasure {
 	const note = noteName(midi);
-	if (!match || !fit) {
-		return {
-			note,
-			f1Hz: null,
-			f1Ci95Hz: null,
-			inharmonicity: null,
-			inharmonicityCi95: null,
-			centsFromEqual: null
-		};
-	}
+	if (!fit) return describeUnfitted(note, midi, firstPartialHz);
 	const f1 = 2 * fit.f1Sd;
 	const b = 2 * fit.inharmonicitySd;
 	return {
@@ -57,5 +60,20 @@ export function describeNote({ midi, match, fit }: FoundNote): NoteMeasure {
 		inharmonicity: fit.inharmonicity,
 		inharmonicityCi95: [Math.max(0, fit.inharmonicity - b), fit.inharmonicity + b],
 		centsFromEqual: centsBetween(fit.f1Hz, equalTemperamentHz(midi))
+	};
+}
+
+/** Half-width of a pitch read off one peak, where several strings may pull it about. */
+const ONE_PEAK_CENTS = 2;
+
+function describeUnfitted(note: string, midi: number, f1Hz: number | null): NoteMeasure {
+	const half = (f1Hz ?? 0) * (ratioFromCents(ONE_PEAK_CENTS) - 1);
+	return {
+		note,
+		f1Hz,
+		f1Ci95Hz: f1Hz === null ? null : [f1Hz - half, f1Hz + half],
+		inharmonicity: null,
+		inharmonicityCi95: null,
+		centsFromEqual: f1Hz === null ? null : centsBetween(f1Hz, equalTemperamentHz(midi))
 	};
 }

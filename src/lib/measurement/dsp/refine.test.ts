@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { espritPoles } from './esprit';
 import { correlate, powerSums } from './pole-sums';
 import { poleStep, refinePoles, residualOf, type Pole } from './refine';
-import { createNoise, createUniform } from './test-signals';
+import { createNoise, createUniform } from '../testing/signals';
 
 const RATE = 93.75;
 

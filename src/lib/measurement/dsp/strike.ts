@@ -61,10 +61,12 @@ export function findStrike(samples: Float32Array, sampleRateHz: number): Strike 
 	for (let i = 0; i < onsets.length; i++) {
 		const next = onsets[i + 1] ?? levels.length;
 		if (onsets[i + 1] !== undefined && next - onsets[i] < together) continue;
-		const strike = { sample: onsets[i] * blockLength, endSample: next * blockLength };
+		const last = onsets[i + 1] === undefined;
+		const endSample = last ? samples.length : next * blockLength;
+		const strike = { sample: onsets[i] * blockLength, endSample };
 		if (!best || lengthOf(strike) > 1.5 * lengthOf(best)) best = strike;
 	}
-	return best && { ...best, endSample: Math.min(best.endSample, samples.length) };
+	return best;
 }
 
 function lengthOf(strike: Strike): number {

@@ -1,9 +1,9 @@
 import { readFile } from 'node:fs/promises';
 import path from 'node:path';
-import { midiFromNoteName } from '../../lib/acoustics/units';
-import { decodeAudio } from '../../lib/measurement/decode';
-import { measureClip } from '../../lib/measurement/dsp/measure-clip';
-import type { MeasureResult, NoteMeasure, PairMeasure } from '../../lib/measurement/types';
+import { midiFromNoteName } from '../../acoustics/units';
+import { decodeAudio } from '../decode';
+import { measureClip } from '../dsp/measure-clip';
+import type { MeasureResult, NoteMeasure, PairMeasure } from '../types';
 
 /** One row of the recordings' reference table (fixtures/recordings/README.md). */
 export interface TruthRow {
