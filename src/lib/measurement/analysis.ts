@@ -2,6 +2,7 @@ import { decodeAudio } from './decode';
 import { measureClip } from './dsp/measure-clip';
 import { shorelineDb } from './dsp/shoreline';
 import { findStrike } from './dsp/strike';
+import { noteDoubt } from './note-doubt';
 import { recordingFacts, type RecordingFacts } from './recording-facts';
 import type { MeasureOptions, MeasureResult } from './types';
 
@@ -16,6 +17,8 @@ export interface PairShore {
 /** Everything the page shows of one clip: numbers only, no sound. */
 export interface Analysis {
 	result: MeasureResult;
+	/** a question when the sound is rather another note's than the one named, else null */
+	doubt: string | null;
 	recording: RecordingFacts;
 	sampleRateHz: number;
 	/** one for each pair of partials in the result, in its order */
@@ -54,12 +57,17 @@ export function analyseSamples(
 	options: MeasureOptions,
 	strikeSample?: number
 ): Analysis {
-	const strike = strikeSample ?? findStrike(samples, sampleRateHz)?.sample ?? 0;
+	const found = findStrike(samples, sampleRateHz);
+	const strike = strikeSample ?? found?.sample ?? 0;
 	const result = measureClip(samples, sampleRateHz, options);
+	const { kind, notes } = options;
+	const single = found && kind !== 'interval' && notes?.length === 1;
+	const doubt = single ? noteDoubt(samples, sampleRateHz, found, notes[0]) : null;
 	const seconds = Math.min(SHORE_SECONDS, options.seconds ?? SHORE_SECONDS);
 	const tone = samples.subarray(strike, strike + Math.round(seconds * sampleRateHz));
 	return {
 		result,
+		doubt,
 		recording: recordingFacts(samples, sampleRateHz, strike),
 		sampleRateHz,
 		shores: shoresOf(tone, sampleRateHz, result)

@@ -75,6 +75,7 @@ export function finding(asked: Partial<Asked>, result: Partial<MeasureResult>): 
 		restarts: 0,
 		analysis: {
 			result: { notes: [], pairs: [], advice: [], ...result },
+			doubt: null,
 			recording: {
 				secondsAfterStrike: 4,
 				peak: 0.5,

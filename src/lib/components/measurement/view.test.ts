@@ -109,6 +109,19 @@ describe('a unison and a note', () => {
 		expect(view.notes[0].lines[2]).toBe('Inharmonicity 0.000310, very likely 0.000307 to 0.000313');
 	});
 
+	it('a note that sounds like another is asked about, not judged, not kept', () => {
+		const found = finding(
+			{ kind: 'unison', highMidi: null },
+			{ notes: [note('A3', 220)], pairs: [beating(4, 4, 881, 1.5, 0.05)] }
+		);
+		found.analysis.doubt = 'This sounds like A4. Was it A3 that you struck?';
+		const view = viewOf(found);
+		expect(view.headline).toBe(found.analysis.doubt);
+		expect(view.judged).toBeNull();
+		expect(view.judgement).toBeNull();
+		expect(view.worthKeeping).toBe(false);
+	});
+
 	it('nothing found is not worth keeping', () => {
 		const silent = note('A3', 220, 0.0003, {
 			f1Hz: null,

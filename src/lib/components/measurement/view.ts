@@ -75,9 +75,10 @@ const answers = (pair: PairMeasure) => pair.verdict !== 'not-measurable';
 /** Puts a finding into words and rows; one place is judged, the others are only told. */
 export function viewOf(finding: Finding): FindingView {
 	const { asked, analysis, source, microphone, pianoId } = finding;
-	const { result, recording, shores } = analysis;
+	const { result, doubt, recording, shores } = analysis;
 	const groups = groupPairs(result);
-	const judged = judgedGroup(asked.kind, asked.lowMidi, groups);
+	// A note that may not be the one named is shown, but neither judged nor kept.
+	const judged = doubt ? null : judgedGroup(asked.kind, asked.lowMidi, groups);
 	const sideAt = (group: PairGroup) =>
 		asked.kind === 'interval' ? sideOf(result, group.first) : null;
 	const row = (group: PairGroup): RowView => {
@@ -97,8 +98,10 @@ export function viewOf(finding: Finding): FindingView {
 	const others = groups.filter((group) => group !== judged).map(row);
 	const midis = [asked.lowMidi, asked.highMidi ?? asked.lowMidi];
 	return {
-		headline: headline({ asked, result, judged, side, judgement, target }),
-		lead: lead(asked, source, recording.secondsAfterStrike),
+		headline: doubt ?? headline({ asked, result, judged, side, judgement, target }),
+		lead: doubt
+			? 'What follows holds only if it was. Nothing is judged, and these numbers are not kept.'
+			: lead(asked, source, recording.secondsAfterStrike),
 		notes: result.notes.map((note, i) => ({
 			name: note.note,
 			f1: note.f1Hz === null ? null : `${note.f1Hz.toFixed(2)} Hz`,
@@ -113,6 +116,7 @@ export function viewOf(finding: Finding): FindingView {
 		advice: result.advice,
 		closing: closingRemarks([side, ...others.map((r) => r.side)]),
 		seconds: Math.min(asked.seconds, recording.secondsAfterStrike),
-		worthKeeping: result.notes.some((n) => n.f1Hz !== null) || result.pairs.some(answers)
+		worthKeeping:
+			!doubt && (result.notes.some((n) => n.f1Hz !== null) || result.pairs.some(answers))
 	};
 }
