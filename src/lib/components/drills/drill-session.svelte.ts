@@ -31,8 +31,8 @@ export interface SessionTools {
 	readonly newSeed: () => number;
 }
 
-/** Truth comes about half a second after the answer: later teaches less. */
-export const FEEDBACK_MS = 500;
+/** Truth comes about half a second after the answer, drawing included: later teaches less. */
+export const FEEDBACK_MS = 400;
 
 export type SessionPhase = 'intro' | 'trial' | 'committed' | 'reveal' | 'summary';
 
