@@ -33,9 +33,9 @@ export function labelClass(label: string): MicrophoneLabelClass {
 	const words = label.toLowerCase();
 	if (words === '') return 'unnamed';
 	if (/virtual|loopback|monitor of|fake|stereo mix|cable output/.test(words)) return 'virtual';
-	if (/headset|headphone|earbud|airbud|hands-?free|bluetooth|buds/.test(words)) return 'headset';
-	if (/usb|interface|scarlett/.test(words)) return 'usb';
-	if (/built-?in|internal|macbook|realtek|array|integrated/.test(words)) return 'built-in';
+	if (/headset|headphone|earbud|hands-?free|bluetooth/.test(words)) return 'headset';
+	if (/usb|interface/.test(words)) return 'usb';
+	if (/built-?in|internal|array|integrated/.test(words)) return 'built-in';
 	return 'other';
 }
 

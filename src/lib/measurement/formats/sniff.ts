@@ -42,7 +42,7 @@ function sniffOther(bytes: Uint8Array): SniffedFormat {
 	if (hasText(bytes, 0, 'MThd'))
 		return { kind: 'other', what: 'a MIDI file, which holds no sound' };
 	if (hasText(bytes, 0, '\x1aE\xdf\xa3')) return { kind: 'other', what: 'a WebM or Matroska file' };
-	if (hasText(bytes, 0, '0&\xb2u')) return { kind: 'other', what: 'a Windows Media file' };
+	if (hasText(bytes, 0, '0&\xb2u')) return { kind: 'other', what: 'an ASF (WMA) file' };
 	if (bytes[0] === 0xff && (bytes[1] & 0xf6) === 0xf0) {
 		return { kind: 'other', what: 'an AAC file' };
 	}
