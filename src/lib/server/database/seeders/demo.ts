@@ -138,8 +138,11 @@ async function seedAttempts(student: DemoStudent, people: People, endMs: number)
 		profile: student.profile,
 		untilMs: endMs - student.awayDays * DAY_MS
 	});
+	// Two learners may share a seed, their attempts must not share ids.
+	const random = createRandom(5000 + STUDENTS.indexOf(student));
 	for (const attempt of attempts) {
-		await storeAttempt(actor, attempt, new Date(attempt.finishedAt));
+		const own = { ...attempt, id: uuidFrom(random) };
+		await storeAttempt(actor, own, new Date(attempt.finishedAt));
 	}
 }
 
