@@ -66,7 +66,7 @@ export function cleanAnswer(band: BandSignal, order: OrderFit, question: BandQue
 	);
 }
 
-/** The verdicts on all pairs of components, the strongest pair first. */
+/** The verdicts on all pairs of components: those that beat first, the strongest pair first. */
 function pairVerdicts(
 	order: OrderFit,
 	heard: Component[],
@@ -93,7 +93,11 @@ function pairVerdicts(
 			found.push({ verdict: cleanVerdict(rate, half, least, question), strength });
 		}
 	}
-	return found.sort((a, b) => b.strength - a.strength).map(({ verdict }) => verdict);
+	// Where any pair beats the sound is not still, so beating pairs come first.
+	const rank = (verdict: BandVerdict): number => (verdict.verdict === 'beating' ? 0 : 1);
+	return found
+		.sort((a, b) => rank(a.verdict) - rank(b.verdict) || b.strength - a.strength)
+		.map(({ verdict }) => verdict);
 }
 
 function cleanVerdict(

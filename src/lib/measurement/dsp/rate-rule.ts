@@ -27,6 +27,9 @@ const MIN_SEPARATION = 2.5;
 /** The depth of a component 20 dB below the other: what is left out as inaudible. */
 const MIN_DEPTH = 0.2;
 const RIVAL_SHARE = 0.6;
+/** A group this wide, re the rate, that turns this often is more than one string. */
+const WIDE_GROUP = 0.3;
+const MANY_CYCLES = 5;
 /** A ripple this deep that completes a cycle forbids to call the sound still. */
 const UNCLEAR_DEPTH = 0.1;
 const MIN_CYCLES = 1.5;
@@ -59,6 +62,7 @@ export function unisonRate(
 	if (split && (pairs.length === 0 || pairs[0].depth <= split.depth)) {
 		const worth = (other: Split): number => other.separation * other.depth;
 		if (!enough(split.depth)) return 'masked';
+		if (moreThanTwo(split, window)) return 'unclear';
 		return {
 			split,
 			by: 'clusters',
@@ -73,6 +77,13 @@ export function unisonRate(
 	if (!enough(pairs[0].depth)) return 'masked';
 	const rivals = pairs.filter(({ depth }) => depth >= RIVAL_SHARE * pairs[0].depth);
 	return { split: pairs[0], by: 'pair', others: pairs.slice(1), rivals };
+}
+
+/** Whether a group is itself two strings that beat against each other, rather than one string. */
+function moreThanTwo(split: Split, window: SplitWindow): boolean {
+	const spread = 2 * Math.max(split.lowSpreadHz, split.highSpreadHz);
+	const cycles = (spread * (window.to - window.from)) / window.rateHz;
+	return spread > WIDE_GROUP * split.rateHz && cycles > MANY_CYCLES;
 }
 
 /** Whether a pair's rate is that of the split, give or take the groups' widths. */
