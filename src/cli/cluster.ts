@@ -194,13 +194,13 @@ export async function startCluster(options: Options): Promise<Cluster> {
 	return { url: url('ebbtone'), folder, stop };
 }
 
-/** Stops and deletes scratch clusters whose maker has died. */
+/** Stops and deletes scratch clusters, and deletes scratch mail, whose maker has died. */
 async function sweepScratch(): Promise<void> {
 	const programs = await requirePostgres(() => {});
 	const account = serverAccount();
 	for (const parent of [stateFolder(), OUTSIDE].filter((p) => existsSync(p))) {
 		for (const name of readdirSync(parent)) {
-			const maker = Number(/^postgres-scratch-(\d+)-/.exec(name)?.[1]);
+			const maker = Number(/^(?:postgres-scratch|mail)-(\d+)(?:-|$)/.exec(name)?.[1]);
 			if (!maker || isAlive(maker)) continue;
 			const folder = join(parent, name);
 			const data = join(folder, 'data');

@@ -54,7 +54,8 @@ const auth = SvelteKitAuth(async (event) => ({
 		error: (problem) => {
 			if (!(problem instanceof CredentialsSignin)) log().error({ reason: problem.message }, 'auth');
 		},
-		warn: (code) => log().warn({ code }, 'auth'),
+		// Its only warnings are about settings that are meant as they are.
+		warn: () => {},
 		debug: () => {}
 	}
 }));
