@@ -40,6 +40,12 @@ export const dayField = z
 	.optional()
 	.default('');
 
+/** The page of a list that an address asks for, counted from 1. */
+export function pageNumber(url: URL): number {
+	const asked = Number(url.searchParams.get('page') ?? 1);
+	return Number.isInteger(asked) && asked >= 1 && asked <= 100_000 ? asked : 1;
+}
+
 /** One line above a form: what was done, or why not. */
 export interface FormMessage {
 	kind: 'done' | 'refused';
