@@ -1,127 +1,171 @@
-/**
- * Every load, action and endpoint authorises in its first statement: requireActor, requireRole, or
- * publicRoute for what is open on purpose.
- */
-import { readFileSync, readdirSync } from 'node:fs';
-import { join, relative } from 'node:path';
-import { fileURLToPath } from 'node:url';
+import { readdirSync, readFileSync } from 'node:fs';
+import { join } from 'node:path';
 import ts from 'typescript';
 import { describe, expect, it } from 'vitest';
 
-const root = fileURLToPath(new URL('../..', import.meta.url));
+const ROUTES = join(process.cwd(), 'src/routes');
+const GUARDS = new Set(['requireActor', 'requireRole', 'publicRoute']);
+const METHODS = new Set(['GET', 'HEAD', 'POST', 'PUT', 'PATCH', 'DELETE', 'OPTIONS', 'fallback']);
 const SERVER_FILE = /^\+(page\.server|layout\.server|server)\.ts$/;
-const METHODS = new Set(['GET', 'POST', 'PUT', 'PATCH', 'DELETE', 'OPTIONS', 'HEAD', 'fallback']);
-const AUTHORISING = new Set(['requireActor', 'requireRole', 'publicRoute']);
 
-type Handler = { name: string; body: ts.Node | undefined };
+interface Handler {
+	name: string;
+	/** The function's body; null where what is exported is no function written on the spot. */
+	body: ts.ConciseBody | null;
+}
 
-function unwrapped(node: ts.Expression): ts.Expression {
-	if (
-		ts.isSatisfiesExpression(node) ||
+/** Unwraps `satisfies`, `as` and brackets. */
+function bare(node: ts.Expression): ts.Expression {
+	return ts.isSatisfiesExpression(node) ||
 		ts.isAsExpression(node) ||
 		ts.isParenthesizedExpression(node)
-	)
-		return unwrapped(node.expression);
-	return node;
+		? bare(node.expression)
+		: node;
 }
 
-function handler(name: string, value: ts.Expression | undefined): Handler {
-	const inner = value && unwrapped(value);
-	return {
-		name,
-		body:
-			inner && (ts.isArrowFunction(inner) || ts.isFunctionExpression(inner))
-				? inner.body
-				: undefined
-	};
+function bodyOf(node: ts.Expression | undefined): ts.ConciseBody | null {
+	if (!node) return null;
+	const value = bare(node);
+	return ts.isArrowFunction(value) || ts.isFunctionExpression(value) ? value.body : null;
 }
 
-/** Loads, actions and endpoints of a route file; one whose function cannot be seen has no body. */
-export function handlersIn(text: string): Handler[] {
-	const file = ts.createSourceFile('route.ts', text, ts.ScriptTarget.Latest, true);
+function actionsOf(node: ts.Expression | undefined): Handler[] {
+	const object = node && bare(node);
+	if (!object || !ts.isObjectLiteralExpression(object)) return [{ name: 'actions', body: null }];
+	return object.properties.map((property) => {
+		const name = `actions.${property.name?.getText() ?? '?'}`;
+		if (ts.isPropertyAssignment(property)) return { name, body: bodyOf(property.initializer) };
+		if (ts.isMethodDeclaration(property)) return { name, body: property.body ?? null };
+		return { name, body: null };
+	});
+}
+
+const isExported = (node: ts.HasModifiers) =>
+	(ts.getModifiers(node) ?? []).some((m) => m.kind === ts.SyntaxKind.ExportKeyword);
+const isHandlerName = (name: string) => name === 'load' || METHODS.has(name);
+
+/** Every load, action and request handler that a server file of a route exports. */
+export function handlersOf(file: string, text: string): Handler[] {
+	const source = ts.createSourceFile(file, text, ts.ScriptTarget.Latest, true);
 	const found: Handler[] = [];
-	for (const statement of file.statements) {
-		const exported = ts.canHaveModifiers(statement)
-			? ts.getModifiers(statement)?.some(({ kind }) => kind === ts.SyntaxKind.ExportKeyword)
-			: false;
-		if (ts.isExportDeclaration(statement)) found.push({ name: 're-export', body: undefined });
-		if (!exported) continue;
-		if (ts.isFunctionDeclaration(statement) && statement.name) {
-			const name = statement.name.text;
-			if (name === 'load' || METHODS.has(name)) found.push({ name, body: statement.body });
-		}
-		if (!ts.isVariableStatement(statement)) continue;
-		for (const { name, initializer } of statement.declarationList.declarations) {
-			if (!ts.isIdentifier(name)) continue;
-			if (name.text === 'load' || METHODS.has(name.text))
-				found.push(handler(name.text, initializer));
-			if (name.text === 'actions') found.push(...actionsIn(initializer));
+	for (const statement of source.statements) {
+		if (ts.isExportDeclaration(statement)) {
+			// Re-exported or exported by a list: what stands behind it cannot be seen from here.
+			const clause = statement.exportClause;
+			const names =
+				clause && ts.isNamedExports(clause) ? clause.elements.map((e) => e.name.text) : ['*'];
+			for (const name of names) {
+				if (name === '*' || name === 'actions' || isHandlerName(name))
+					found.push({ name, body: null });
+			}
+		} else if (ts.isFunctionDeclaration(statement) && isExported(statement)) {
+			const name = statement.name?.text ?? 'default';
+			if (isHandlerName(name)) found.push({ name, body: statement.body ?? null });
+		} else if (ts.isVariableStatement(statement) && isExported(statement)) {
+			for (const { name, initializer } of statement.declarationList.declarations) {
+				const text = name.getText();
+				if (text === 'actions') found.push(...actionsOf(initializer));
+				else if (isHandlerName(text)) found.push({ name: text, body: bodyOf(initializer) });
+			}
 		}
 	}
 	return found;
 }
 
-function actionsIn(initializer: ts.Expression | undefined): Handler[] {
-	const value = initializer && unwrapped(initializer);
-	if (!value || !ts.isObjectLiteralExpression(value)) return [{ name: 'actions', body: undefined }];
-	return value.properties.map((property): Handler => {
-		const name = `actions.${property.name?.getText() ?? '?'}`;
-		if (ts.isMethodDeclaration(property)) return { name, body: property.body };
-		return handler(name, ts.isPropertyAssignment(property) ? property.initializer : undefined);
-	});
-}
-
-/** The function called by the first statement (or by the expression that is the whole body). */
-function firstCall(body: ts.Node | undefined): string | null {
-	if (!body) return null;
-	let first: ts.Node | undefined = ts.isBlock(body) ? body.statements[0] : body;
+/** The function that the body's first statement calls, directly or for the value of a constant. */
+function firstCall(body: ts.ConciseBody | null): string | null {
+	if (!body || !ts.isBlock(body)) return null;
+	const first = body.statements[0];
+	let call: ts.Expression | undefined;
+	if (first && ts.isExpressionStatement(first)) call = first.expression;
 	if (first && ts.isVariableStatement(first)) {
-		first = first.declarationList.declarations[0].initializer;
+		call = first.declarationList.declarations[0].initializer;
 	}
-	if (first && ts.isExpressionStatement(first)) first = first.expression;
-	if (first && ts.isAwaitExpression(first)) first = first.expression;
-	if (!first || !ts.isCallExpression(first) || !ts.isIdentifier(first.expression)) return null;
-	return first.expression.text;
+	return call && ts.isCallExpression(call) && ts.isIdentifier(call.expression)
+		? call.expression.text
+		: null;
 }
 
-export function unauthorised(text: string): string[] {
-	return handlersIn(text)
-		.filter(({ body }) => !AUTHORISING.has(firstCall(body) ?? ''))
-		.map(({ name }) => name);
+/** True when the guards' names really come from the server's auth room. */
+function importsGuards(text: string): boolean {
+	const imports = [...text.matchAll(/import\s*\{([^}]*)\}\s*from\s*'\$lib\/server\/auth'/g)];
+	return imports.some(([, names]) => names.split(',').some((name) => GUARDS.has(name.trim())));
 }
 
-const routeFiles = readdirSync(join(root, 'src/routes'), { recursive: true, withFileTypes: true })
-	.filter((entry) => entry.isFile() && SERVER_FILE.test(entry.name))
-	.map((entry) => relative(root, join(entry.parentPath, entry.name)))
-	.sort();
+export function unguarded(file: string, text: string): string[] {
+	const handlers = handlersOf(file, text);
+	if (handlers.length > 0 && !importsGuards(text)) return handlers.map((handler) => handler.name);
+	return handlers
+		.filter(({ body }) => !GUARDS.has(firstCall(body) ?? ''))
+		.map((handler) => handler.name);
+}
 
-describe('authorisation in the first statement', () => {
-	it('is looked for in every route file', () => {
-		expect(routeFiles.length).toBeGreaterThan(15);
+const files = readdirSync(ROUTES, { recursive: true, encoding: 'utf8' }).filter((path) =>
+	SERVER_FILE.test(path.split('/').at(-1) ?? '')
+);
+
+describe('every load, action and endpoint authorises in its first statement', () => {
+	it('finds the server files', () => {
+		expect(files.length).toBeGreaterThan(10);
 	});
 
-	it.each(routeFiles)('%s', (file) => {
-		const text = readFileSync(join(root, file), 'utf8');
-		expect(handlersIn(text).length).toBeGreaterThan(0);
-		expect(unauthorised(text)).toEqual([]);
+	it.each(files)('%s', (file) => {
+		const text = readFileSync(join(ROUTES, file), 'utf8');
+		const handlers = handlersOf(file, text);
+		expect(handlers.length, 'a server file without a handler').toBeGreaterThan(0);
+		expect(unguarded(file, text)).toEqual([]);
+	});
+});
+
+describe('the check itself', () => {
+	const auth = "import { requireActor, requireRole, publicRoute } from '$lib/server/auth';\n";
+
+	it.each([
+		[
+			'a load',
+			'export const load = async (event) => { const x = await read(); requireActor(event); };',
+			['load']
+		],
+		['a load without a block', 'export const load = (event) => requireActor(event);', ['load']],
+		[
+			'an endpoint',
+			'export async function POST(event) { return json(await store(event)); }',
+			['POST']
+		],
+		[
+			'an action',
+			'export const actions = { default: async (e) => { requireActor(e); }, drop: async (e) => { await drop(e); } };',
+			['actions.drop']
+		],
+		[
+			'an action as a method',
+			'export const actions = { async keep(e) { await keep(e); } } satisfies Actions;',
+			['actions.keep']
+		],
+		['a load made elsewhere', 'export const load = makeLoad();', ['load']],
+		['a re-export', "export { load } from './other';", ['load']],
+		['everything of another file', "export * from './other';", ['*']],
+		[
+			'a guard inside a condition',
+			'export const load = (e) => { if (e.x) requireActor(e); };',
+			['load']
+		]
+	])('sees %s that does not', (_what, text, names) => {
+		expect(unguarded('x.ts', auth + text)).toEqual(names);
 	});
 
-	it('is missed where it is missing', () => {
-		expect(unauthorised('export const load = async (event) => { return {}; };')).toEqual(['load']);
-		expect(
-			unauthorised('export const GET = (event) => { const x = 1; requireActor(event); return x; };')
-		).toEqual(['GET']);
-		expect(
-			unauthorised(
-				'export const actions = { a: async (event) => { requireActor(event); }, b: async () => {} };'
-			)
-		).toEqual(['actions.b']);
-		expect(unauthorised("export { load } from './elsewhere';")).toEqual(['re-export']);
-		expect(unauthorised('export const POST = wrapped(async (event) => {});')).toEqual(['POST']);
-		expect(
-			unauthorised(
-				'export async function load(event) { const a = requireRole(event, "x"); return a; }'
-			)
-		).toEqual([]);
+	it('sees a guard of another origin', () => {
+		const text =
+			"import { requireActor } from './mine';\nexport const load = (e) => { requireActor(e); return {}; };";
+		expect(unguarded('x.ts', text)).toEqual(['load']);
+	});
+
+	it('lets guarded ones pass', () => {
+		const text = `${auth}
+			export const load: PageServerLoad = async (event) => { const actor = requireRole(event, 'admin'); return {}; };
+			export const actions: Actions = { default: async (event) => { publicRoute(event); } };
+			export function GET(event) { publicRoute(event); return json({}); }
+			export const prerender = false;`;
+		expect(unguarded('x.ts', text)).toEqual([]);
 	});
 });
