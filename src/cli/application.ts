@@ -136,7 +136,7 @@ export async function startApplication(options: ApplicationOptions): Promise<Run
 			HOST: host,
 			PORT: String(port),
 			SMTP_URL: mail.url,
-			BODY_SIZE_LIMIT: process.env.BODY_SIZE_LIMIT ?? '1M',
+			BODY_SIZE_LIMIT: process.env.BODY_SIZE_LIMIT ?? '1500K',
 			SHUTDOWN_TIMEOUT: '5',
 			NODE_ENV: 'production',
 			LOG_LEVEL: process.env.LOG_LEVEL ?? 'warn',

@@ -97,6 +97,21 @@ describe('storing an attempt', () => {
 	});
 });
 
+describe('an attempt that names whose work it is', () => {
+	const sent = (actor: Actor, studentId: string, json: unknown) =>
+		POST(
+			eventFor({ actor, path: '/api/attempts', json, headers: { 'x-student-id': studentId } })
+		) as Promise<Response>;
+
+	it('is taken from that person and not stored for whoever signed in since', async () => {
+		const attempt = playedAttempt({ seed: 18 });
+		const other = await person('student');
+		expect((await sent(other, student.id, attempt)).status).toBe(401);
+		expect(await rowsOf(attempt.id)).toEqual([{ n: 0 }]);
+		expect((await sent(student, student.id, attempt)).status).toBe(201);
+	});
+});
+
 describe('the rollup by day', () => {
 	it('is exact after concurrent, reordered and repeated sending', async () => {
 		const busy = await person('student');

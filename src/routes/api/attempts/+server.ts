@@ -1,6 +1,7 @@
 import { json } from '@sveltejs/kit';
 import { requireRole } from '$lib/server/auth';
 import { readJson, refusalProblem } from '$lib/server/json-endpoint';
+import { problem } from '$lib/server/problem';
 import { listOwnAttempts } from '$lib/server/services/attempt-reading';
 import { storeAttempt } from '$lib/server/services/attempts';
 import type { RequestHandler } from './$types';
@@ -11,6 +12,11 @@ const LARGEST_ATTEMPT_BYTES = 1_200_000;
 /** Stores an attempt: 201 the first time, 200 with the same answer when it is sent again. */
 export const POST: RequestHandler = async (event) => {
 	const actor = requireRole(event, 'student', 'instructor');
+	// Whose work it is, as the sender knows it: another person may have signed in in the meantime.
+	const owner = event.request.headers.get('x-student-id');
+	if (owner !== null && owner !== actor.id) {
+		return problem(401, 'Someone else is signed in', 'This attempt belongs to another account.');
+	}
 	const body = await readJson(event.request, LARGEST_ATTEMPT_BYTES);
 	if (body.refused) return body.refused;
 	try {
