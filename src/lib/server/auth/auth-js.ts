@@ -108,16 +108,3 @@ export async function endSession(event: RequestEvent): Promise<void> {
 	await runAuth(() => auth.signOut(withForm(event, { redirectTo: '/' })));
 	event.locals.actor = null;
 }
-
-/** A path on this site to go on to, from a form or an address; anything else gives null. */
-export function safePath(path: unknown): string | null {
-	if (typeof path !== 'string' || !path.startsWith('/') || path.length > 500) return null;
-	try {
-		const url = new URL(path, 'http://site.invalid');
-		return url.origin === 'http://site.invalid' && !/^\/[/\\]/.test(path)
-			? url.pathname + url.search
-			: null;
-	} catch {
-		return null;
-	}
-}

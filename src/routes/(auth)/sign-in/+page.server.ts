@@ -3,7 +3,8 @@ import { message, superValidate } from 'sveltekit-superforms';
 import { zod } from 'superforms-zod';
 import { z } from 'zod';
 import { homeOf, publicRoute } from '$lib/server/auth';
-import { beginSession, safePath } from '$lib/server/auth/auth-js';
+import { beginSession } from '$lib/server/auth/auth-js';
+import { safePath } from '$lib/server/auth/safe-path';
 import { emailField, givenPassword, withoutPasswords, type FormMessage } from '$lib/server/forms';
 import type { Actions, PageServerLoad } from './$types';
 
