@@ -22,7 +22,8 @@ const UNLIKELY = 1.2816;
 function drift(values: readonly number[]): number {
 	let s = 0;
 	for (let later = 1; later < values.length; later++) {
-		for (let earlier = 0; earlier < later; earlier++) s += Math.sign(values[later] - values[earlier]);
+		for (let earlier = 0; earlier < later; earlier++)
+			s += Math.sign(values[later] - values[earlier]);
 	}
 	const n = values.length;
 	return s / Math.sqrt((n * (n - 1) * (2 * n + 5)) / 18);
