@@ -15,9 +15,10 @@ const HEADERS: Readonly<Record<string, string>> = {
 export const securityHeaders: Handle = async ({ event, resolve }) => {
 	const response = await resolve(event);
 	for (const [name, value] of Object.entries(HEADERS)) response.headers.set(name, value);
-	// Links with a token in the path must not be told to anybody.
+	// Links with a token in the path must not be told to any other site. Not 'no-referrer': with it
+	// browsers send `Origin: null` with the page's own forms, which are then refused as cross-site.
 	if (/^\/(invitation|join|reset)\//.test(event.url.pathname)) {
-		response.headers.set('referrer-policy', 'no-referrer');
+		response.headers.set('referrer-policy', 'same-origin');
 	}
 	if (!response.headers.has('content-security-policy')) {
 		response.headers.set('content-security-policy', "default-src 'none'; frame-ancestors 'none'");
