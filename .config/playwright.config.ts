@@ -1,4 +1,4 @@
-import { defineConfig } from '@playwright/test';
+import { defineConfig, type PlaywrightTestProject } from '@playwright/test';
 import { fileURLToPath } from 'node:url';
 
 const here = (path: string) => fileURLToPath(new URL(path, import.meta.url));
@@ -16,17 +16,27 @@ export const CHROMIUM_ARGS = [
 	'--autoplay-policy=no-user-gesture-required'
 ];
 
-/** The microphone hears a real recording, prepared by the global set-up. */
-function microphone(file: string): string[] {
-	return [
-		...CHROMIUM_ARGS,
-		'--use-fake-ui-for-media-stream',
-		'--use-fake-device-for-media-stream',
-		`--use-file-for-fake-audio-capture=${here(`../.ebbtone/e2e/${file}.wav`)}`
-	];
-}
-
 const executablePath = process.env.CHROMIUM_PATH ?? '/usr/bin/chromium';
+
+/** A browser whose microphone hears a real recording, prepared when the application is served. */
+function microphone(name: string, recording: string): PlaywrightTestProject {
+	return {
+		name: `microphone-${name}`,
+		testMatch: new RegExp(`/${name}\\.microphone\\.spec\\.ts$`),
+		use: {
+			permissions: ['microphone'],
+			launchOptions: {
+				executablePath,
+				args: [
+					...CHROMIUM_ARGS,
+					'--use-fake-ui-for-media-stream',
+					'--use-fake-device-for-media-stream',
+					`--use-file-for-fake-audio-capture=${here(`../.ebbtone/e2e/${recording}.wav`)}`
+				]
+			}
+		}
+	};
+}
 
 export default defineConfig({
 	testDir: here('../tests/e2e'),
@@ -51,13 +61,7 @@ export default defineConfig({
 			testMatch: /\.phone\.spec\.ts$/,
 			use: { viewport: { width: 390, height: 844 }, hasTouch: true, isMobile: true }
 		},
-		{
-			name: 'microphone',
-			testMatch: /\.microphone\.spec\.ts$/,
-			use: {
-				permissions: ['microphone'],
-				launchOptions: { executablePath, args: microphone('grand-one-a3-v10-l') }
-			}
-		}
+		microphone('note', 'grand-one-a3-v10-l'),
+		microphone('interval', 'grand-one-a3c4-m3-v10-l')
 	]
 });
