@@ -58,7 +58,7 @@ setInterval(() => {
 	if (process.ppid !== parent) asked.abort();
 }, 1000).unref();
 
-let code = 0;
+let code: number;
 let unlock: () => void = () => {};
 try {
 	unlock = takeLock('start', (pid) => `Ebbtone runs from this folder already (process ${pid}).`);
