@@ -66,7 +66,7 @@ export const STUDENTS: readonly DemoStudent[] = [
 	student('jory', 'Jory Copperthwick', 'one-string-at-a-time-52', {
 		profile: PATIENT,
 		seed: 202,
-		awayDays: 0
+		awayDays: 1
 	}),
 	student('mirabel', 'Mirabel Dunnock', 'the-beat-slows-down-17', {
 		profile: LEARNER_PROFILES.gifted,
