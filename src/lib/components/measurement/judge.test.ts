@@ -140,4 +140,12 @@ describe('the judged place', () => {
 		expect(judgedGroup('unison', 84, groups)?.lowerPartial).toBe(1);
 		expect(judgedGroup('unison', 57, groupsOf(pair(4, 4, 881)))).toBeNull();
 	});
+
+	it('of a unison is a firm answer before one that is only about right', () => {
+		const unsure = beating(4, 4, 881, 2, 0.2, { tier: 'about' });
+		expect(
+			judgedGroup('unison', 57, groupsOf(beating(2, 2, 440, 1, 0.03), unsure))?.lowerPartial
+		).toBe(2);
+		expect(judgedGroup('unison', 57, groupsOf(unsure))?.lowerPartial).toBe(4);
+	});
 });

@@ -79,7 +79,8 @@ const isAnswer = (group: PairGroup) => group.first.verdict !== 'not-measurable';
 
 /**
  * The one place that is judged: the customary pair of an interval, which stands first; of a unison
- * the first partial in order of preference that was measured. A single note is not judged.
+ * the first partial in order of preference that was measured firmly, or else measured at all. A
+ * single note is not judged.
  */
 export function judgedGroup(
 	kind: 'note' | 'unison' | 'interval',
@@ -88,10 +89,10 @@ export function judgedGroup(
 ): PairGroup | null {
 	if (kind === 'note') return null;
 	if (kind === 'interval') return groups[0] ?? null;
-	const found = unisonPreference(midi)
+	const answers = unisonPreference(midi)
 		.map((n) => groups.find((g) => g.lowerPartial === n && isAnswer(g)))
-		.find((g) => g !== undefined);
-	return found ?? null;
+		.filter((g) => g !== undefined);
+	return answers.find((g) => g.first.tier !== 'about') ?? answers[0] ?? null;
 }
 
 /** Place of a note's partial in hertz and half of its 95 % interval; null when B is not known. */
