@@ -13,7 +13,7 @@ const KEYS = [
 export async function drawFrom(page: Page, seed: number): Promise<void> {
 	await page.addInitScript((fixed) => {
 		const random = crypto.getRandomValues.bind(crypto);
-		crypto.getRandomValues = ((array: Uint32Array) => {
+		crypto.getRandomValues = ((array: Uint32Array<ArrayBuffer>) => {
 			if (!(array instanceof Uint32Array) || array.length !== 1) return random(array);
 			array[0] = fixed;
 			return array;

@@ -45,6 +45,8 @@ interface Fixtures {
  * content policy fails the test unless it was expected.
  */
 export const test = base.extend<Fixtures & { faults: { seen: string[]; expected: RegExp[] } }>({
+	// Playwright finds out what a fixture needs by reading this pattern.
+	// eslint-disable-next-line no-empty-pattern
 	faults: async ({}, use) => {
 		const faults = { seen: [] as string[], expected: [] as RegExp[] };
 		await use(faults);
