@@ -83,6 +83,9 @@ export function drawCurve(canvas: HTMLCanvasElement, data: CurveData): CurveChar
 
 type Colour = (name: string) => string;
 
+/** A mark on the edge of the drawing is shown whole: this far beyond nothing is cut off. */
+const MARK_PX = 9;
+
 function datasets(data: CurveData, colour: Colour): ChartDataset<'scatter', XY[]>[] {
 	const top = topOf(data);
 	const outside = (value: number) => data.tolerance !== null && value > data.tolerance;
@@ -97,6 +100,7 @@ function datasets(data: CurveData, colour: Colour): ChartDataset<'scatter', XY[]
 			borderWidth: 2.4,
 			pointRadius: 0,
 			pointHitRadius: 8,
+			clip: MARK_PX,
 			order: 1
 		},
 		{
@@ -109,6 +113,7 @@ function datasets(data: CurveData, colour: Colour): ChartDataset<'scatter', XY[]
 			pointBackgroundColor: isOut.map((out) => (out ? colour('ground') : colour('ink'))),
 			pointBorderColor: isOut.map((out) => (out ? colour('felt') : colour('ink'))),
 			pointBorderWidth: 1.8,
+			clip: MARK_PX,
 			order: 2
 		}
 	];

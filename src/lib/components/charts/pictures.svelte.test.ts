@@ -116,7 +116,7 @@ describe('Curve', () => {
 		expect(cells).toHaveLength(2);
 		expect(cells[0]).toMatch(/3 Nov\.\s*0\.70\s*0\.80, 0\.60/);
 		expect(screen.getByRole('img').getAttribute('aria-label')).toBe(
-			'Unison, error left. Median 2.00 cents on 1 Nov., 0.70 on 3 Nov.; the tolerance is 1 cents.'
+			'Unison, error left. Median 2.00 cents on 1 Nov., 0.70 on 3 Nov.; the tolerance is 1 cent.'
 		);
 		vi.unstubAllGlobals();
 	});
