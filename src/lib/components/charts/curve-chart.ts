@@ -11,9 +11,10 @@ import {
 	ScatterController,
 	Tooltip,
 	type ChartDataset,
-	type Plugin
+	type Plugin,
+	type Scale
 } from 'chart.js';
-import { axisTop, dayOf, shortDay } from './curve';
+import { axisDays, axisTop, dayOf, dayTicks, shortDay } from './curve';
 
 Chart.register(LinearScale, LineController, LineElement, PointElement, ScatterController, Tooltip);
 
@@ -33,7 +34,12 @@ export interface CurveChart {
 }
 
 type XY = { x: number; y: number };
-const DAY_MS = 86_400_000;
+
+/** Narrower axes carry fewer days. */
+const NARROW_PX = 520;
+/** Room above the drawing for the figures of what lies beyond its upper end. */
+const BEYOND_PX = 30;
+const FONT = { family: "'Ysabeau Office Variable', sans-serif", size: 15, weight: 500 };
 
 /** Draws the curve in a canvas. */
 export function drawCurve(canvas: HTMLCanvasElement, data: CurveData): CurveChart {
@@ -59,11 +65,40 @@ export function drawCurve(canvas: HTMLCanvasElement, data: CurveData): CurveChar
 		}
 	};
 
+	/** What lies beyond the upper end stands at the edge: an arrow and its figure say how far. */
+	const beyond: Plugin<'scatter'> = {
+		id: 'beyond',
+		afterDatasetsDraw({ ctx, chartArea, scales }) {
+			const top = topOf(current);
+			const y = chartArea.top;
+			let freeFrom = -Infinity;
+			ctx.save();
+			ctx.strokeStyle = ctx.fillStyle = colour('felt');
+			ctx.lineWidth = 1.8;
+			ctx.textAlign = 'center';
+			ctx.font = `700 ${FONT.size}px ${FONT.family}`;
+			for (const { atMs, value } of beyondOf(current, top)) {
+				const x = scales.x.getPixelForValue(atMs);
+				ctx.beginPath();
+				ctx.moveTo(x - 4, y - 8.5);
+				ctx.lineTo(x, y - 12.5);
+				ctx.lineTo(x + 4, y - 8.5);
+				ctx.stroke();
+				const text = value < 10 ? value.toFixed(1) : String(Math.round(value));
+				const half = ctx.measureText(text).width / 2;
+				if (x - half < freeFrom) continue;
+				ctx.fillText(text, Math.min(x, chartArea.right - half), y - 16.5);
+				freeFrom = x + half + 6;
+			}
+			ctx.restore();
+		}
+	};
+
 	const chart = new Chart<'scatter', XY[]>(canvas, {
 		type: 'scatter',
 		data: { datasets: datasets(current, colour) },
 		options: options(current, colour),
-		plugins: [band]
+		plugins: [band, beyond]
 	});
 
 	const renew = () => {
@@ -94,13 +129,13 @@ function datasets(data: CurveData, colour: Colour): ChartDataset<'scatter', XY[]
 	return [
 		{
 			label: 'median of the day',
-			data: data.medians.map(({ atMs, value }) => ({ x: atMs, y: Math.min(value, top) })),
+			data: data.medians.map(({ atMs, value }) => ({ x: atMs, y: value })),
 			showLine: true,
 			borderColor: colour('ink'),
 			borderWidth: 2.4,
 			pointRadius: 0,
 			pointHitRadius: 8,
-			clip: MARK_PX,
+			clip: { left: MARK_PX, top: 0, right: MARK_PX, bottom: MARK_PX },
 			order: 1
 		},
 		{
@@ -125,35 +160,42 @@ const topOf = (data: CurveData) =>
 		data.tolerance
 	);
 
+/** The attempts above the upper end, in order of time. */
+const beyondOf = (data: CurveData, top: number) =>
+	data.points.filter(({ value }) => value > top).sort((a, b) => a.atMs - b.atMs);
+
 function options(data: CurveData, colour: Colour) {
-	const times = [...data.points, ...data.medians].map(({ atMs }) => atMs);
-	const first = times.length ? Math.min(...times) : 0;
-	const last = times.length ? Math.max(...times) : DAY_MS;
-	const font = { family: "'Ysabeau Office Variable', sans-serif", size: 15, weight: 500 };
-	const ticks = { color: colour('ink-soft'), font };
+	const span = axisDays([...data.points, ...data.medians].map(({ atMs }) => atMs));
+	const top = topOf(data);
+	const ticks = { color: colour('ink-soft'), font: FONT };
 	return {
 		// All marks appear together: nothing is drawn on.
 		animation: false as const,
 		responsive: true,
 		maintainAspectRatio: false,
+		layout: { padding: { top: beyondOf(data, top).length > 0 ? BEYOND_PX : 8 } },
 		scales: {
 			x: {
 				type: 'linear' as const,
-				min: first - DAY_MS / 2,
-				max: last + DAY_MS / 2,
+				min: span[0],
+				max: span[1],
 				grid: { display: false },
 				border: { color: colour('ink'), width: 1.25 },
+				afterBuildTicks: (axis: Scale) => {
+					const most = axis.width < NARROW_PX ? 3 : 6;
+					axis.ticks = dayTicks(span, most).map((value) => ({ value }));
+				},
 				ticks: {
 					...ticks,
-					maxTicksLimit: 6,
+					autoSkip: false,
 					maxRotation: 0,
-					stepSize: Math.max(1, Math.ceil((last - first) / DAY_MS / 5)) * DAY_MS,
+					align: 'inner' as const,
 					callback: (value: string | number) => shortDay(dayOf(Number(value)))
 				}
 			},
 			y: {
 				min: 0,
-				max: topOf(data),
+				max: top,
 				grid: { color: colour('hair'), drawTicks: false },
 				border: { display: false },
 				ticks: { ...ticks, maxTicksLimit: 6, padding: 8 }
@@ -165,8 +207,8 @@ function options(data: CurveData, colour: Colour) {
 				backgroundColor: colour('ink'),
 				titleColor: colour('on-ink'),
 				bodyColor: colour('on-ink'),
-				titleFont: font,
-				bodyFont: font,
+				titleFont: FONT,
+				bodyFont: FONT,
 				displayColors: false,
 				cornerRadius: 2,
 				callbacks: {

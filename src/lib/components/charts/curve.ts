@@ -55,20 +55,48 @@ export function daysOf(points: readonly CurvePoint[], medians: readonly DailyMed
 	});
 }
 
+/** A tolerance is still seen when the axis is this many times as high. */
+const WIDEST_AXIS = 8;
+
 /**
- * A round upper end for the axis that keeps the tolerance readable: above nearly all points, at most
- * eight times the tolerance. Points above it are drawn at the edge.
+ * A round upper end for the axis that keeps the tolerance readable: all values, as long as that is at
+ * most eight times the tolerance or nearly all of them lie higher; never above fifteen times it.
+ * Values above the end are marked at the edge with their figure.
  */
 export function axisTop(values: readonly number[], tolerance: number | null): number {
 	const sorted = [...values].sort((a, b) => a - b);
-	const high = sorted.length
-		? sorted[Math.min(sorted.length - 1, Math.floor(sorted.length * 0.97))]
-		: 1;
-	const wanted = Math.max(high * 1.15, (tolerance ?? 0) * 2, 0.1);
-	const capped = tolerance ? Math.min(wanted, tolerance * 12) : wanted;
-	const power = 10 ** Math.floor(Math.log10(capped));
-	const step = [1, 1.5, 2, 3, 4, 5, 6, 8, 10].find((s) => s * power >= capped) ?? 10;
+	const highest = sorted.at(-1) ?? 0;
+	const most = sorted[Math.floor((sorted.length - 1) * 0.9)] ?? 0;
+	const least = Math.max((tolerance ?? 0) * 2, 0.1);
+	const room = tolerance ? Math.max(tolerance * WIDEST_AXIS, most * 1.1) : Infinity;
+	const limit = tolerance ? tolerance * 15 : Infinity;
+	const wanted = Math.max(least, Math.min(highest * 1.04, room, limit));
+	const power = 10 ** Math.floor(Math.log10(wanted));
+	const step = [1, 1.5, 2, 3, 4, 5, 6, 8, 10].find((s) => s * power >= wanted * (1 - 1e-9)) ?? 10;
 	return Number((step * power).toPrecision(3));
+}
+
+const DAY_MS = 86_400_000;
+
+/** The axis of time: from the beginning of the first day to the end of the last, milliseconds (UTC). */
+export function axisDays(times: readonly number[]): [startMs: number, endMs: number] {
+	const first = times.length ? Math.min(...times) : 0;
+	const last = times.length ? Math.max(...times) : first;
+	return [Math.floor(first / DAY_MS) * DAY_MS, (Math.floor(last / DAY_MS) + 1) * DAY_MS];
+}
+
+/**
+ * Noons of the days that are written at the axis, milliseconds: the first, the last, and whole days
+ * between as evenly as days go, at most `most` in all.
+ */
+export function dayTicks([startMs, endMs]: readonly [number, number], most: number): number[] {
+	const days = Math.round((endMs - startMs) / DAY_MS);
+	const steps = Math.min(days, most) - 1;
+	if (steps < 1) return [startMs + DAY_MS / 2];
+	return Array.from(
+		{ length: steps + 1 },
+		(_, k) => startMs + (Math.round((k * (days - 1)) / steps) + 0.5) * DAY_MS
+	);
 }
 
 /** "3 Nov." from YYYY-MM-DD, the same on the server and in the browser. */

@@ -36,6 +36,20 @@ describe('RangeGlyph', () => {
 		});
 	});
 
+	it('writes the tolerance once where its brackets are close', () => {
+		const { container } = render(RangeGlyph, {
+			value: 14,
+			tolerance: [-1, 1],
+			domain: [-15, 15],
+			tags: ['−1.00', '+1.00'],
+			verdict: 'outside',
+			widthPx: 340
+		});
+		expect([...container.querySelectorAll('text')].map((tag) => tag.textContent)).toEqual([
+			'± 1.00'
+		]);
+	});
+
 	it('tells near by half a dot', () => {
 		const { container } = render(RangeGlyph, {
 			value: 0.6,
@@ -81,6 +95,23 @@ describe('ShorePair', () => {
 		expect(wide?.querySelectorAll('.tie2')).toHaveLength(2);
 		expect(wide?.querySelectorAll('.knot.goal')).toHaveLength(4);
 		expect(wide?.querySelectorAll('.gr')).toHaveLength(0);
+	});
+
+	it('numbers the beats of both alike, and fewer where they crowd', () => {
+		const numbers = (goal: boolean) =>
+			[...document.querySelectorAll(`.slim text.n${goal ? '.goal' : ':not(.goal)'}`)].map(
+				(text) => text.textContent
+			);
+		draw(0.49, 0.9);
+		expect(numbers(false)).toEqual(['1', '2']);
+		expect(numbers(true)).toEqual(['1', '2', '3', '4']);
+		cleanup();
+		draw(3.9, 3.8);
+		// In 4 s: quietest at (0.468 + k) / rate seconds, k from 0: 16 beats and 15.
+		expect(document.querySelectorAll('.slim .knot:not(.goal)')).toHaveLength(16);
+		expect(document.querySelectorAll('.slim .knot.goal')).toHaveLength(15);
+		expect(numbers(false)).toEqual(['2', '4', '6', '8', '10', '12', '14', '16']);
+		expect(numbers(true)).toEqual(['2', '4', '6', '8', '10', '12', '14']);
 	});
 
 	it('puts the rule in their place when they crowd', () => {

@@ -71,6 +71,41 @@ export function rangeGeometry(input: RangeInput): RangeGeometry {
 	};
 }
 
+export interface Tag {
+	readonly text: string;
+	/** Middle of the text, px. */
+	readonly x: number;
+}
+
+/** Width of a figure of the axis text, px: tabular figures of 0.517 em at 15 px. */
+const FIGURE_PX = 7.8;
+const TAG_GAP_PX = 10;
+const textWidth = (text: string) => text.length * FIGURE_PX;
+
+/**
+ * Where the figures of the two brackets stand. Too close for two, they are said once beneath the
+ * middle of the gate: "± 1.00" when they are opposites, "0.70 to 1.10" otherwise. None leaves the
+ * picture.
+ */
+export function tagPlaces(
+	tags: readonly [string, string],
+	gate: Pick<RangeGeometry, 'gateLeft' | 'gateWidth'>,
+	widthPx: number
+): Tag[] {
+	const within = (text: string, x: number): Tag => {
+		const half = textWidth(text) / 2;
+		return { text, x: Math.min(Math.max(half, widthPx - half), Math.max(half, x)) };
+	};
+	const [least, greatest] = tags;
+	const pair = [within(least, gate.gateLeft), within(greatest, gate.gateLeft + gate.gateWidth)];
+	const apart = (textWidth(least) + textWidth(greatest)) / 2 + TAG_GAP_PX;
+	if (pair[1].x - pair[0].x >= apart) return pair;
+	const size = greatest.replace(/^\+/, '');
+	const opposites = least === `−${size}` || least === `-${size}`;
+	const once = opposites ? `± ${size}` : `${least} to ${greatest}`;
+	return [within(once, gate.gateLeft + gate.gateWidth / 2)];
+}
+
 /**
  * A domain that shows tolerance, interval and value with room around them, starting at nothing when
  * nothing is one of its ends. Any unit.
