@@ -2,7 +2,7 @@ import { randomUUID } from 'node:crypto';
 import { QueryTypes } from 'sequelize';
 import { afterAll, describe, expect, it, vi } from 'vitest';
 import { hashPassword } from '../../src/lib/server/auth/password';
-import { LIMITS } from '../../src/lib/server/auth/rate-limit';
+import { countTry, LIMITS } from '../../src/lib/server/auth/rate-limit';
 import { closeDatabase, database } from '../../src/lib/server/database';
 import { PasswordReset, User } from '../../src/lib/server/models';
 import {
@@ -39,6 +39,17 @@ async function asked() {
 }
 
 describe('a link for a new password', () => {
+	it('lets its owner in again after a stranger has used up every try', async () => {
+		const { actor, token } = await asked();
+		const { points } = LIMITS['sign-in-account'];
+		for (let i = 0; i < points; i++) await countTry('sign-in-account', actor.email);
+		await expect(authenticate(actor.email, NEW, address())).rejects.toMatchObject({
+			kind: 'too-many'
+		});
+		await setPasswordByLink(token, NEW, address());
+		expect(await authenticate(actor.email, NEW, address())).toMatchObject({ id: actor.id });
+	});
+
 	it('sets it once, ends every session and tells the owner', async () => {
 		const { actor, token } = await asked();
 		expect(await readReset(token, address())).toMatchObject({

@@ -56,6 +56,16 @@ describe('who signs in', () => {
 		expect(await authenticate(fresh.email, 'nobody has this password', from)).toBeNull();
 	});
 
+	it('leaves the same trace whether or not the account exists', async () => {
+		const known = await account();
+		const refused = () => AuditEntry.count({ where: { action: 'session.refused' } });
+		for (const email of [known.email, 'stranger@studio.example']) {
+			const before = await refused();
+			await authenticate(email, 'not the password', address());
+			expect(await refused()).toBe(before + 1);
+		}
+	});
+
 	it('costs the same work whether or not the account exists', async () => {
 		const known = await account();
 		const compare = vi.spyOn(bcrypt, 'compare');

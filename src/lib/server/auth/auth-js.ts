@@ -83,24 +83,24 @@ async function runAuth(run: () => unknown): Promise<void> {
 
 /**
  * Begins a session for whoever has this address and password, and sets its cookie.
- * @returns the person, or a sentence why not.
+ * @returns the person, or a sentence why not with its HTTP status.
  */
 export async function beginSession(
 	event: RequestEvent,
 	email: string,
 	password: string
-): Promise<{ actor: Actor; refused?: undefined } | { refused: string }> {
+): Promise<{ actor: Actor; refused?: undefined } | { refused: string; status: 401 | 429 }> {
 	event.locals.actor = null;
 	try {
 		const fields = { providerId: 'credentials', email, password, redirectTo: '/' };
 		await runAuth(() => auth.signIn(withForm(event, fields)));
 	} catch (problem) {
-		if (problem instanceof TooMany) return { refused: problem.sentence };
+		if (problem instanceof TooMany) return { refused: problem.sentence, status: 429 };
 		if (!(problem instanceof CredentialsSignin)) throw problem;
 	}
 	const { actor } = event.locals;
 	if (actor) return { actor };
-	return { refused: 'This address and password do not belong together.' };
+	return { refused: 'This address and password do not belong together.', status: 401 };
 }
 
 /** Ends this browser's session. */

@@ -3,6 +3,7 @@ import { RateLimiterPostgres, RateLimiterRes } from 'rate-limiter-flexible';
 import type { Sequelize } from 'sequelize';
 import { database } from '../database';
 import { Refusal } from '../refusal';
+import { networkOf } from './network';
 
 interface Limit {
 	points: number;
@@ -56,7 +57,10 @@ function limiterOf(name: LimitName): RateLimiterPostgres {
 
 /** Keys are kept as hashes: the table holds no addresses. */
 const keyOf = (...parts: string[]) =>
-	createHash('sha256').update(parts.join('\n').toLowerCase()).digest('base64url').slice(0, 32);
+	createHash('sha256')
+		.update(parts.map(networkOf).join('\n').toLowerCase())
+		.digest('base64url')
+		.slice(0, 32);
 
 function wait(milliseconds: number): string {
 	const minutes = Math.max(1, Math.ceil(milliseconds / 60_000));

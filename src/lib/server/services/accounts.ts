@@ -12,6 +12,7 @@ import { PasswordReset, User } from '../models';
 import { Refusal } from '../refusal';
 import { audit } from './audit';
 import { queueLetter } from './mail';
+import { isUuid } from './visibility';
 
 const RESET_MINUTES = 60;
 
@@ -39,7 +40,12 @@ export async function authenticate(
 	const user = await User.findOne({ where: { email: account } });
 	const matches = await isPassword(password, user?.passwordHash ?? null);
 	if (!user || !matches || user.deactivatedAt) {
-		if (user) await audit({ actorId: null, action: 'session.refused', subject: subject(user) });
+		// Also written where there is no account: the answer must take as long.
+		await audit({
+			actorId: null,
+			action: 'session.refused',
+			subject: user ? subject(user) : undefined
+		});
 		return null;
 	}
 	await takeBackTry('sign-in-address', address);
@@ -53,7 +59,7 @@ const subject = (user: User) => ({ type: 'user' as const, id: user.id });
 
 /** The person of a session, as the database knows them now; null when the session is worth nothing. */
 export async function actorOfSession(id: unknown, sessionVersion: unknown): Promise<Actor | null> {
-	if (typeof id !== 'string' || !/^[0-9a-f-]{36}$/.test(id)) return null;
+	if (typeof id !== 'string' || !isUuid(id)) return null;
 	database();
 	const user = await User.findByPk(id);
 	if (!user || user.deactivatedAt || user.sessionVersion !== sessionVersion) return null;
@@ -138,7 +144,7 @@ export async function setPasswordByLink(
 	if (fault) throw new Refusal('invalid', fault, 'password');
 	// Outside the transaction: it takes long.
 	const passwordHash = await hashPassword(password);
-	return database().transaction(async (transaction) => {
+	const owner = await database().transaction(async (transaction) => {
 		const where = usable(hashOfToken(token) as string);
 		const reset = await PasswordReset.findOne({ where, lock: true, transaction });
 		const user = reset && (await User.findByPk(reset.userId, { lock: true, transaction }));
@@ -157,6 +163,10 @@ export async function setPasswordByLink(
 		}
 		return user.email;
 	});
+	// Whoever reads the account's mail is its owner: a stranger's tries must not keep them out.
+	await forgetTries('sign-in-account', owner);
+	await forgetTries('sign-in-pair', owner, address);
+	return owner;
 }
 
 const noticeFacts = (user: User) => ({ name: user.name, href: `${env().ORIGIN}/forgot` });

@@ -39,7 +39,8 @@ export const actions: Actions = {
 		if (!form.valid) return fail(400, { form });
 		const outcome = await beginSession(event, email, password);
 		if (outcome.refused !== undefined) {
-			return message(form, { kind: 'refused', text: outcome.refused }, { status: 401 });
+			const { refused, status } = outcome;
+			return message(form, { kind: 'refused', text: refused }, { status });
 		}
 		redirect(303, safePath(redirectTo) ?? homeOf(outcome.actor.role));
 	}
