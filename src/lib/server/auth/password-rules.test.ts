@@ -44,7 +44,9 @@ describe('passwords', () => {
 		'123456789012',
 		'qwertyuiopas',
 		'lkjhgfdsapoi',
-		'abababababab'
+		'abababababab',
+		'lantern-lantern',
+		'Passw0rd!Passw0rd!'
 	])('refuses the pattern %j', (password) => {
 		expect(passwordFault(password)).toMatch(/pattern/);
 	});

@@ -51,11 +51,11 @@ function isCommon(lower: string): boolean {
 	return spellings.some((s) => COMMON_PASSWORDS.has(s) || HEARTS.has(s));
 }
 
-/** True for one short piece over and over, such as `abcabcabcabc`. */
+/** True for one piece twice or more often, such as `abcabcabcabc` or `lantern-lantern`. */
 function repeatsItself(lower: string): boolean {
-	return [...Array(Math.floor(lower.length / 2)).keys()]
+	return [...Array(Math.ceil(lower.length / 2)).keys()]
 		.map((i) => i + 1)
-		.some((size) => size <= 8 && lower.slice(0, size).repeat(lower.length).startsWith(lower));
+		.some((size) => lower.slice(0, size).repeat(lower.length).startsWith(lower));
 }
 
 function runsAlongKeys(lower: string): boolean {
