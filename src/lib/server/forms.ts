@@ -19,11 +19,19 @@ export const emailField = z
 		'This is not a whole e-mail address; it should look like name@example.org.'
 	);
 
+/** Signs that turn the direction of writing, so that a name could pretend to be another, or show nothing. */
+const HIDDEN = /[\u202a-\u202e\u2066-\u2069\u200b\u2060\ufeff]/g;
+/** Something that can be seen: not only spaces, joiners, accents and letters without a shape. */
+const VISIBLE = /[^\p{Z}\p{C}\p{M}\u115f\u1160\u2800\u3164\uffa0]/u;
+
+/** A name of a person or a class: one line of text that can be seen. */
 export const nameField = z
 	.string()
+	.overwrite((text) => text.replace(/[\p{Cc}\u2028\u2029]+/gu, ' ').replace(HIDDEN, ''))
 	.trim()
 	.min(1, 'Type a name.')
-	.max(120, 'Use at most 120 characters.');
+	.max(120, 'Use at most 120 characters.')
+	.regex(VISIBLE, 'Type a name that can be read.');
 
 /** A password somebody signs in with: any text. */
 export const givenPassword = z.string().min(1, 'Type your password.').max(1000);
