@@ -109,6 +109,13 @@ describe('looking after users', () => {
 		expect(await found("'; DROP TABLE class; --")).toEqual([]);
 	});
 
+	it('knows no user under what is no id', async () => {
+		for (const id of ['', 'x', '-'.repeat(36), 'a'.repeat(36), "' OR true --"]) {
+			await expect(deactivateUser(admin, id)).rejects.toMatchObject({ kind: 'not-found' });
+			await expect(changeRole(admin, id, 'admin')).rejects.toMatchObject({ kind: 'not-found' });
+		}
+	});
+
 	it('writes who did what', async () => {
 		const user = await createUser(admin, {
 			email: `${randomUUID()}@studio.example`,

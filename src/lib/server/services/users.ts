@@ -8,6 +8,7 @@ import { PasswordReset, User } from '../models';
 import { Refusal } from '../refusal';
 import { audit, mustBeAdmin } from './audit';
 import { queueLetter } from './mail';
+import { isUuid } from './visibility';
 
 const WELCOME_DAYS = 7;
 const PAGE = 50;
@@ -111,7 +112,7 @@ async function changeUser(
 	change: (user: User, transaction: Transaction) => Promise<void>
 ): Promise<void> {
 	mustBeAdmin(actor);
-	if (!/^[0-9a-f-]{36}$/.test(userId)) throw new Refusal('not-found', 'There is no such user.');
+	if (!isUuid(userId)) throw new Refusal('not-found', 'There is no such user.');
 	await database().transaction(async (transaction) => {
 		// In the order of ids, so that two such changes wait for each other instead of locking up.
 		const admins = await User.findAll({
