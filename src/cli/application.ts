@@ -10,6 +10,7 @@ import { ROOT, stateFolder } from './setup/places';
 import { freePort, isFree } from './setup/ports';
 import { SetUpError } from './setup/run';
 import { keptSecret } from './setup/secrets';
+import { copyForServing } from './setup/serving';
 
 export interface ApplicationOptions {
 	/** A database and mail of its own, thrown away at the end; for tests and benchmarks. */
@@ -91,11 +92,12 @@ async function untilHealthy(
 }
 
 function serve(settings: Record<string, string>, closers: Closer[]) {
-	const server = spawn(process.execPath, [join(ROOT, 'build', 'index.js')], {
+	const folder = copyForServing(join(ROOT, 'build'), stateFolder());
+	const server = spawn(process.execPath, [join(folder, 'index.js')], {
 		cwd: ROOT,
 		// Its log goes to stderr: stdout carries the address and the demo sign-ins only.
 		stdio: ['ignore', 2, 2],
-		env: { ...process.env, ...settings },
+		env: { ...process.env, ...settings, STARTED_BY: String(process.pid) },
 		// Ctrl-C in a terminal goes to us; we stop the server before the database.
 		detached: true
 	});
@@ -104,11 +106,13 @@ function serve(settings: Record<string, string>, closers: Closer[]) {
 		server.on('error', () => resolve(127));
 	});
 	closers.push(async () => {
-		if (server.exitCode !== null || server.signalCode !== null) return;
-		server.kill('SIGTERM');
-		const late = pause(8000).then(() => server.kill('SIGKILL'));
-		await Promise.race([ended, late]);
-		await ended;
+		if (server.exitCode === null && server.signalCode === null) {
+			server.kill('SIGTERM');
+			const late = pause(8000).then(() => server.kill('SIGKILL'));
+			await Promise.race([ended, late]);
+			await ended;
+		}
+		rmSync(folder, { recursive: true, force: true });
 	});
 	return { server, ended };
 }

@@ -94,15 +94,18 @@ function makeData(folder: string, programs: string, account: ServerAccount, hast
 	account.own(ready);
 }
 
-/** Removes a lock file whose server is gone, also when its process number lives on elsewhere. */
+/**
+ * Removes a lock file whose process number lives on in another program, which PostgreSQL takes for a
+ * server of its own. When nothing has that number, PostgreSQL looks after the file itself, and makes
+ * sure that no remains of the old server still write.
+ */
 function clearStaleLock(data: string): void {
 	const lock = join(data, 'postmaster.pid');
 	if (!existsSync(lock)) return;
 	const pid = Number(readFileSync(lock, 'utf8').split('\n')[0]);
 	const commandLine = `/proc/${pid}/cmdline`;
-	const alive = pid > 0 && isAlive(pid);
-	const isOurs =
-		alive && (!existsSync(commandLine) || readFileSync(commandLine, 'utf8').includes(data));
+	if (!(pid > 0 && isAlive(pid))) return;
+	const isOurs = !existsSync(commandLine) || readFileSync(commandLine, 'utf8').includes(data);
 	if (!isOurs) rmSync(lock, { force: true });
 }
 

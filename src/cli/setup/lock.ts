@@ -1,6 +1,6 @@
 import { existsSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
-import { stateFolder } from './places';
+import { ROOT, stateFolder } from './places';
 import { isAlive, SetUpError } from './run';
 
 /**
@@ -18,15 +18,15 @@ export function takeLock(name: string, refusal: (pid: number) => string): () => 
 			if ((problem as NodeJS.ErrnoException).code !== 'EEXIST') throw problem;
 		}
 		const holder = existsSync(path) ? Number(readFileSync(path, 'utf8')) : 0;
-		if (holder > 0 && isAlive(holder) && isNode(holder)) throw new SetUpError(refusal(holder));
+		if (holder > 0 && isAlive(holder) && isOurs(holder)) throw new SetUpError(refusal(holder));
 		rmSync(path, { force: true });
 	}
 	throw new SetUpError(`The lock ${path} cannot be taken.`);
 }
 
-/** A process number lives on in other programs; ours are Node.js. Unknown counts as ours. */
-function isNode(pid: number): boolean {
+/** A process number lives on in other programs; ours run from this clone. Unknown counts as ours. */
+function isOurs(pid: number): boolean {
 	const path = `/proc/${pid}/cmdline`;
 	if (!existsSync('/proc/self')) return true;
-	return existsSync(path) && /node|tsx/.test(readFileSync(path, 'utf8'));
+	return existsSync(path) && readFileSync(path, 'utf8').includes(join(ROOT, 'src', 'cli'));
 }

@@ -5,9 +5,25 @@ import { log } from '../log';
 import { closeTransport } from '../mail/transport';
 import { startMailDelivery } from '../services/mail';
 
+/**
+ * `npm start` names its own process. When that is gone without a word, the database it ran goes next:
+ * a server that lived on would hold the address and answer with nothing but failures.
+ */
+function endWithStarter(): void {
+	const starter = Number(process.env.STARTED_BY);
+	if (!starter) return;
+	const watch = setInterval(() => {
+		if (process.ppid === starter) return;
+		clearInterval(watch);
+		process.kill(process.pid, 'SIGTERM');
+	}, 1000);
+	watch.unref();
+}
+
 /** Opens what the server needs, and arranges that all of it is closed again. */
 export async function openServer(): Promise<void> {
 	env();
+	endWithStarter();
 	await database().authenticate();
 	await preparePasswords();
 	const endDelivery = startMailDelivery();
