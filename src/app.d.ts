@@ -10,6 +10,8 @@ declare global {
 		interface Locals {
 			/** The signed-in person, read from the database for this request; null for a stranger. */
 			actor: Actor | null;
+			/** Something in this request failed because the database does not answer. */
+			databaseAway?: boolean;
 		}
 	}
 }

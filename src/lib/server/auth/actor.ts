@@ -14,7 +14,7 @@ export interface Actor {
 
 /** What authorisation needs to know of a request; a part of SvelteKit's RequestEvent. */
 export interface AuthorisedEvent {
-	locals: { actor: Actor | null };
+	locals: { actor: Actor | null; databaseAway?: boolean };
 	url: URL;
 	request: { method: string };
 }
@@ -28,6 +28,7 @@ const isApi = (event: AuthorisedEvent) => event.url.pathname.startsWith('/api/')
 export function requireActor(event: AuthorisedEvent): Actor {
 	const actor = event.locals.actor;
 	if (actor) return actor;
+	if (event.locals.databaseAway) error(503, 'The database does not answer. Nothing is lost.');
 	if (isApi(event)) error(401, 'Sign in first.');
 	const back =
 		event.request.method === 'GET' ? event.url.pathname + event.url.search : event.url.pathname;

@@ -4,7 +4,9 @@ import { sequence } from '@sveltejs/kit/hooks';
 import { randomUUID } from 'node:crypto';
 import { authHandle } from '../auth/auth-js';
 import { log } from '../log';
+import { isDatabaseAway } from '../database/away';
 import { apiProblems } from './api';
+import { sayWhenAway } from './away';
 import { securityHeaders } from './headers';
 import { openServer } from './lifecycle';
 import { oneAddress, refuseCrossSite } from './origin';
@@ -14,6 +16,7 @@ const serving = sequence(
 	securityHeaders,
 	oneAddress,
 	refuseCrossSite,
+	sayWhenAway,
 	apiProblems,
 	noAuthEndpoints,
 	authHandle,
@@ -34,6 +37,7 @@ export const init: ServerInit = async () => {
 /** The person gets a sentence and a reference; the log gets the cause under the same reference. */
 export const handleError: HandleServerError = ({ error, event, status, message }) => {
 	if (status < 500) return { message };
+	event.locals.databaseAway ||= isDatabaseAway(error);
 	const reference = randomUUID().slice(0, 8);
 	const cause = error instanceof Error ? error : new Error('unknown');
 	// The stack's own lines only: the first line of a database error may carry values.
