@@ -17,15 +17,18 @@ export const securityHeaders: Handle = async ({ event, resolve }) => {
 	for (const [name, value] of Object.entries(HEADERS)) response.headers.set(name, value);
 	// Links with a token in the path must not be told to any other site. Not 'no-referrer': with it
 	// browsers send `Origin: null` with the page's own forms, which are then refused as cross-site.
-	if (/^\/(invitation|join|reset)\//.test(event.url.pathname)) {
+	const secretLink = /^\/(invitation|join|reset)\//.test(event.url.pathname);
+	if (secretLink) {
 		response.headers.set('referrer-policy', 'same-origin');
 	}
 	if (!response.headers.has('content-security-policy')) {
 		response.headers.set('content-security-policy', "default-src 'none'; frame-ancestors 'none'");
 	}
-	// What a signed-in person sees stays out of shared caches.
-	if (event.locals.actor && !response.headers.has('cache-control')) {
-		response.headers.set('cache-control', 'private, no-cache');
+	// What a signed-in person sees, or what a link in a mail opens, is kept nowhere: after signing out
+	// the browser's Back key must not show it again.
+	const personal = Boolean(event.locals.actor) || secretLink;
+	if (personal && !response.headers.has('cache-control')) {
+		response.headers.set('cache-control', 'private, no-store');
 	}
 	if (usesHttps()) {
 		response.headers.set('strict-transport-security', 'max-age=31536000');
