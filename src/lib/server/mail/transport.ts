@@ -19,6 +19,10 @@ export async function sendBySmtp(mail: {
 		transport?.transporter.close();
 		const transporter = createTransport(url, {
 			from,
+			// Each mail waits for the one before it: a server that says nothing must not hold them all.
+			connectionTimeout: 10_000,
+			greetingTimeout: 10_000,
+			socketTimeout: 20_000,
 			// A recipient is an address, never a path or a link to fetch.
 			disableFileAccess: true,
 			disableUrlAccess: true
