@@ -26,11 +26,11 @@ function levelOf(piano: PianoModel, note: number, velocity: number): number {
 	const steps = 400;
 	let energy = 0;
 	for (let n = 1; n <= HIGHEST_PARTIAL; n += 1) {
-		if (partialHzFromF1(n, f1Hz, piano.inharmonicity(note)) >= 20_000) break;
+		if (partialHzFromF1(n, f1Hz, piano.inharmonicity(note)) >= 18_000) break;
 		const tone = piano.tone(note, n, velocity);
 		const decay = tone.decayPerSecond + strings * tone.bridgePerSecond;
 		for (let k = 0; k < steps; k += 1) {
-			const t = (0.2 * (k + 0.5)) / steps;
+			const t = (0.1 * (k + 0.5)) / steps;
 			energy += (strings * tone.amplitude * Math.exp(-decay * t)) ** 2 / 2 / steps;
 		}
 	}

@@ -15,4 +15,9 @@ export {
 	pianoModel,
 	type PianoId
 } from './piano-spec';
-export { loneStringDecayDbPerSecond, strikeLevel } from './piano-tone';
+export {
+	AUDIBLE_LIMIT_HZ,
+	LEVEL_WINDOW_S,
+	loneStringDecayDbPerSecond,
+	strikeLevel
+} from './piano-tone';

@@ -34,10 +34,13 @@ const SQUARE_LOSS_DB_PER_HZ2 = (DB_PER_NEPER * 2.7e-4 * (Math.PI / 0.62) ** 2) /
 
 /** Level of a blow of velocity 1, root mean square of full scale over the window below. */
 const FULL_BLOW_LEVEL = 0.09;
-/** The level of a strike is taken over its first seconds. */
-const LEVEL_WINDOW_S = 0.2;
+/**
+ * The level of a strike is taken over its first 0.1 s, about what the ear adds up: the short top
+ * notes then sound as loud as the others without peaks that a limiter would bend.
+ */
+export const LEVEL_WINDOW_S = 0.1;
 /** Partials above this are not heard and take no part in the level. */
-const AUDIBLE_LIMIT_HZ = 20_000;
+export const AUDIBLE_LIMIT_HZ = 18_000;
 /** The comb of the strike point never quite reaches zero: a hammer is some millimetres wide. */
 const COMB_FLOOR = 0.04;
 
@@ -107,7 +110,7 @@ function losses(shape: PianoShape, midi: Midi, hz: Hertz, f1Hz: Hertz, phase: nu
 
 /**
  * All partials of a note at one velocity, scaled so that the root mean square of the note with
- * all its strings over the first 0.2 s is velocity^1.5 × 0.09 of full scale, on every note: the
+ * all its strings over the first 0.1 s is velocity^1.5 × 0.09 of full scale, on every note: the
  * strings start in phase and decay together at γ + N·Re η.
  */
 function noteTone(
@@ -136,7 +139,7 @@ function noteTone(
 	return { partials };
 }
 
-/** Level that a strike of this velocity has on every note, root mean square over its first 0.2 s. */
+/** Level that a strike of this velocity has on every note, root mean square over its first 0.1 s. */
 export function strikeLevel(velocity: number): number {
 	return FULL_BLOW_LEVEL * Math.min(1, Math.max(0, velocity)) ** 1.5;
 }

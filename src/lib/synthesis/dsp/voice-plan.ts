@@ -1,4 +1,10 @@
-import { HIGHEST_PARTIAL, pianoFromSpec, strikeLevel } from '../../acoustics/piano-model';
+import {
+	AUDIBLE_LIMIT_HZ,
+	HIGHEST_PARTIAL,
+	LEVEL_WINDOW_S,
+	pianoFromSpec,
+	strikeLevel
+} from '../../acoustics/piano-model';
 import { partialHzFromF1 } from '../../acoustics/stiff-string';
 import { equalTemperamentHz, ratioFromCents } from '../../acoustics/units';
 import type { BringForward, VoiceSpec } from '../types';
@@ -9,13 +15,6 @@ export const MAX_STRINGS = 4;
 export const MAX_PARTIALS = HIGHEST_PARTIAL;
 /** Partials above this share of the sample rate are left out: a retuned string must not fold over. */
 const HIGHEST_SHARE_OF_RATE = 0.45;
-/** Partials above this are not heard. */
-const AUDIBLE_LIMIT_HZ = 18_000;
-/**
- * Level of a strike is taken over this time, about what the ear adds up, in seconds: the short top
- * notes then sound as loud as the others without peaks that the limiter would bend.
- */
-const LEVEL_WINDOW_S = 0.1;
 
 /**
  * All that a kernel needs to sound one strike: numbers only, so that it can be posted to the audio
