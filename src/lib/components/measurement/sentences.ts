@@ -177,13 +177,16 @@ export function targetLine(target: IntervalTarget, frequencyHz: number): string 
 	return `${goal} ${rateFigure(-from)} ${other} to ${rateFigure(to)} ${target.direction}`;
 }
 
-/** What a still place means: the slowest beat that would have shown, and the strings' distance. */
+/**
+ * What a still place means: the slowest beat that would have shown, and how far apart two strings
+ * can be as they sound together (alone they may differ by more: see {@link closingRemarks}).
+ */
 export function stillLine(pair: PairMeasure, twoStrings: boolean): string {
 	const limit = stillLimitHz(pair);
 	const first = `A beat slower than ${rateFigure(limit)} per second would not have shown.`;
 	if (!twoStrings) return first;
 	const cents = centsOfBeats(limit, pair.frequencyHz).toFixed(2);
-	return `${first} The strings are at most ${cents} cents apart.`;
+	return `${first} Together they sound at most ${cents} cents apart.`;
 }
 
 /** What to do about a place that could not be measured; empty when the reason says it already. */
@@ -218,11 +221,17 @@ export function shoreLabel(group: PairGroup): string {
 	return `Loudness at ${group.pitch} over the time heard: ${what}.`;
 }
 
-/** Remarks at the end of a result. */
-export function closingRemarks(sides: readonly (Side | null)[]): string {
+/**
+ * Remarks at the end of a result.
+ * @param stillUnison whether strings of one note stood still somewhere: they may be locked
+ */
+export function closingRemarks(sides: readonly (Side | null)[], stillUnison: boolean): string {
 	const both = sides.includes('wide') && sides.includes('narrow');
 	const stiff = both
 		? 'Wide at one place and narrow at another is no contradiction: stiff wire spreads the partials, so an interval has a beat of its own at each meeting place. '
 		: '';
-	return `${stiff}“Very likely” is the 95 % range.`;
+	const locked = stillUnison
+		? 'Strings this close draw each other into one pitch over the bridge; struck one by one they may lie a little further apart. '
+		: '';
+	return `${stiff}${locked}“Very likely” is the 95 % range.`;
 }

@@ -90,6 +90,8 @@ describe('a unison and a note', () => {
 		);
 		expect(view.headline).toBe('A3 is still, as far as 4 seconds can show.');
 		expect(view.judgement?.verdict).toBe('still');
+		// Locked strings do not beat although they differ: the page must not say otherwise.
+		expect(view.closing).toContain('further apart');
 	});
 
 	it('a note is told by pitch, stiffness and distance from the target', () => {

@@ -114,7 +114,10 @@ export function viewOf(finding: Finding): FindingView {
 		target,
 		others,
 		advice: result.advice,
-		closing: closingRemarks([side, ...others.map((r) => r.side)]),
+		closing: closingRemarks(
+			[side, ...others.map((r) => r.side)],
+			asked.kind === 'unison' && groups.some((group) => group.first.verdict === 'still')
+		),
 		seconds: Math.min(asked.seconds, recording.secondsAfterStrike),
 		worthKeeping:
 			!doubt && (result.notes.some((n) => n.f1Hz !== null) || result.pairs.some(answers))

@@ -65,15 +65,31 @@ describe('checkFinding', () => {
 			'0.74 beats per second at partials 3:2, very likely 0.70 to 0.78.'
 		);
 	});
-	it('says still, and why nothing could be measured', () => {
-		expect(checkFinding(check([pair({ verdict: 'still', upperPartial: 3 })]))).toBe(
-			'Still at partial 3.'
+	it('says still with its limit, and why nothing could be measured', () => {
+		const still = pair({ verdict: 'still', upperPartial: 3, beatRateHz: null, ci95Hz: null });
+		const reason = 'No beat faster than 0.38 per second in the time heard.';
+		expect(checkFinding(check([{ ...still, reason }]))).toBe(
+			'Still at partial 3: no beat faster than 0.38 per second.'
 		);
 		const none = pair({ verdict: 'not-measurable', beatRateHz: null, reason: 'It dies too soon.' });
 		expect(checkFinding(check([none]))).toBe(
 			'No beat measurable at partials 3:2: It dies too soon.'
 		);
 		expect(checkFinding(check([]))).toBe('No beat measurable.');
+	});
+	it('tells a unison where String check judges it, and says when it is only about', () => {
+		const at = (n: number, over: Partial<PairMeasure>) =>
+			pair({ lowerPartial: n, upperPartial: n, ...over });
+		const pairs = [
+			at(1, { beatRateHz: 0.2, ci95Hz: [0.1, 0.3] }),
+			at(4, { tier: 'about', beatRateHz: 1.23, ci95Hz: [1.11, 1.35] })
+		];
+		const unison: Partial<StringCheck> = { kind: 'unison', notes: ['A3'] };
+		expect(checkFinding(check([pairs[1]], unison))).toBe(
+			'About 1.2 beats per second at partial 4, very likely 1.1 to 1.4.'
+		);
+		expect(checkFinding(check(pairs, unison))).toMatch(/at partial 1,/);
+		expect(checkFinding(check([pairs[0], at(4, {})], unison))).toMatch(/at partial 4,/);
 	});
 	it('says where a note lies', () => {
 		const note = {

@@ -1,4 +1,8 @@
+import { A4_MIDI, midiFromNoteName } from '../../acoustics/units';
 import type { ScoredDrillId } from '../../drills/types';
+import { rateFigure } from '../measurement/figures';
+import { groupPairs, judgedGroup, stillLimitHz } from '../measurement/judge';
+import { likelyLine } from '../measurement/sentences';
 import type { DrillProgress, StringCheck, Trend } from './types';
 
 /** The trend in a word or two, as it stands beside the line. */
@@ -51,28 +55,33 @@ export function checkedNotes(check: StringCheck): string {
 	return names.join('–') || 'no note found';
 }
 
-/** What a string check found, in one sentence. */
+/**
+ * What a string check found, in one sentence: at the place that String check judges, and to as many
+ * digits.
+ */
 export function checkFinding(check: StringCheck): string {
 	if (check.kind === 'note') return noteFinding(check);
-	// A unison is judged where it beats: its first partial is often locked still.
-	const beating = check.result.pairs.find(({ verdict }) => verdict === 'beating');
-	const pair = (check.kind === 'unison' && beating) || check.result.pairs[0];
+	const groups = groupPairs(check.result);
+	const lowMidi = midiFromNoteName(check.notes[0] ?? check.result.notes[0]?.note ?? '') ?? A4_MIDI;
+	const pair = (judgedGroup(check.kind, lowMidi, groups) ?? groups[0])?.first;
 	if (!pair) return 'No beat measurable.';
 	const partials =
 		pair.lowerPartial === pair.upperPartial
 			? `partial ${pair.lowerPartial}`
 			: `partials ${pair.lowerPartial}:${pair.upperPartial}`;
-	if (pair.verdict === 'still') return `Still at ${partials}.`;
+	if (pair.verdict === 'still') {
+		return `Still at ${partials}: no beat faster than ${rateFigure(stillLimitHz(pair))} per second.`;
+	}
 	if (pair.verdict === 'not-measurable' || pair.beatRateHz === null) {
 		return `No beat measurable at ${partials}${pair.reason ? `: ${pair.reason}` : ''}.`.replace(
 			/\.\.$/,
 			'.'
 		);
 	}
-	const range = pair.ci95Hz
-		? `, very likely ${pair.ci95Hz[0].toFixed(2)} to ${pair.ci95Hz[1].toFixed(2)}`
-		: '';
-	return `${pair.beatRateHz.toFixed(2)} beats per second at ${partials}${range}.`;
+	const about = pair.tier === 'about';
+	const rate = `${about ? 'About ' : ''}${rateFigure(pair.beatRateHz, about)}`;
+	const likely = likelyLine(pair, null);
+	return `${rate} beats per second at ${partials}${likely ? `, ${likely}` : ''}.`;
 }
 
 function noteFinding(check: StringCheck): string {
