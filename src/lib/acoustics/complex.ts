@@ -26,7 +26,7 @@ export function divide(a: Complex, b: Complex): Complex {
 }
 
 /** Principal square root: real part 0 or above. */
-export function squareRoot(a: Complex): Complex {
+function squareRoot(a: Complex): Complex {
 	const size = magnitude(a);
 	if (size === 0) return { re: 0, im: 0 };
 	const re = Math.sqrt((size + Math.abs(a.re)) / 2);

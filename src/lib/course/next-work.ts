@@ -1,3 +1,4 @@
+import { TOLERANCE_SETS } from '../acoustics/tolerances';
 import type { ScoredDrillId } from '../drills/types';
 import { dayOf } from './mastery';
 import type { AttemptRecord, CourseRecords } from './records';
@@ -112,7 +113,7 @@ function openReason(records: CourseRecords, { drill, stepId }: Skill, mixed: boo
 	if (mixed)
 		return `${score}; taking turns between drills teaches more than one drill over and over.`;
 	if (stepId === 'unisons')
-		return `${score}; at the unisons the bar is a working tuner's, 0.6 cents.`;
+		return `${score}; at the unisons the bar is a working tuner’s, ${TOLERANCE_SETS.working.unison} cents.`;
 	return `${score}; it is behind you once eight of ten are, on two days.`;
 }
 

@@ -1,7 +1,12 @@
+import type { PianoId as ShippedPianoId } from '../acoustics/piano-model';
 import type { ToleranceSetId } from '../acoustics/tolerances';
 
 /** The closed lists a stimulus may name. */
-export const DRILL_PIANOS = ['short-upright', 'medium-grand', 'long-grand'] as const;
+export const DRILL_PIANOS = [
+	'short-upright',
+	'medium-grand',
+	'long-grand'
+] as const satisfies readonly ShippedPianoId[];
 export type PianoId = (typeof DRILL_PIANOS)[number];
 
 export const TOLERANCE_SET_IDS = [

@@ -1,4 +1,4 @@
-import { centsWords, figure, movingNote, rateWords } from './words';
+import { figure, movingNote } from './words';
 import type { IntervalTrialResult, TrialResult, TrialSpec, UnisonTrialResult } from './types';
 
 /** One finding of a trial, as it is shown: a figure, its words, and where it lies in the tolerance. */
@@ -107,9 +107,4 @@ function sharpOrFlat(cents: number): string {
 
 function sideWord(signedHz: number): string {
 	return signedHz < 0 ? 'narrow' : 'wide';
-}
-
-/** The whole of a trial's findings as running text, for those who do not see the pictures. */
-export function trialInWords(spec: TrialSpec, result: TrialResult): string {
-	return `${movingNote(spec)} was left ${centsWords(result.errorCents)}; ${rateWords(result.rateHeardHz)} at the judged partial; ${result.inside ? 'inside' : 'outside'} the tolerance.`;
 }

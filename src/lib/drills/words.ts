@@ -20,7 +20,7 @@ export function fixedNote(spec: TrialSpec): string {
 	return noteName(spec.moving === 'low' ? spec.highMidi : spec.lowMidi);
 }
 
-/** "C4, two strings" or "A3–D4". */
+/** "C4" or "A3–D4". */
 export function trialName(spec: TrialSpec): string {
 	if (spec.drill === 'unison') return noteName(spec.midi);
 	return `${noteName(spec.lowMidi)}–${noteName(spec.highMidi)}`;
@@ -51,17 +51,17 @@ export function intervalName(spec: IntervalTrialSpec): string {
 	return INTERVALS[spec.interval].name;
 }
 
-/** "0.35 cents sharp", "1 cent flat", "exactly on". */
+/** "0.35 cents sharp", "1.00 cent flat", "not 0.01 cents off". */
 export function centsWords(cents: number): string {
 	const size = Math.abs(cents);
 	if (size < 0.005) return 'not 0.01 cents off';
 	return `${figure(size)} ${size === 1 ? 'cent' : 'cents'} ${cents > 0 ? 'sharp' : 'flat'}`;
 }
 
-/** "no beat" or "0.49 beats a second". */
+/** "no beat" or "0.49 beats per second". */
 export function rateWords(rateHz: number): string {
 	if (rateHz < 0.005) return 'no beat';
-	return `${figure(rateHz)} beats a second`;
+	return `${figure(rateHz)} beats per second`;
 }
 
 /** The verdict as a sentence, for the heading of the reveal. */

@@ -8,9 +8,6 @@ export interface Hearing {
 	readonly weber: number;
 }
 
-/** An ear without noise that hears every beat. */
-export const PERFECT_HEARING: Hearing = { thresholdHz: 0, weber: 0 };
-
 /**
  * The rate an ear makes of a real one: 0 when no beat is noticed. Noticing follows a Weibull curve
  * over the rate (half at the threshold, slope 2); the rate is judged with log-normal noise. A model

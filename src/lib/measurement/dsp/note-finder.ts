@@ -1,6 +1,6 @@
 import { PitchDetector } from 'pitchy';
 import { A4_MIDI, STANDARD_A4_HZ, equalTemperamentHz, ratioFromCents } from '../../acoustics/units';
-import { nearestPeak, partialOf, searchComb, type CombMatch, type CombRange } from './comb';
+import { partialOf, searchComb, type CombMatch, type CombRange } from './comb';
 import { findPeaks, levelSpectrum, type SpectralPeak } from './spectrum';
 import { fitStiffness, readPartials, type StiffnessFit } from './stiffness-fit';
 import type { Strike } from './strike';
@@ -46,7 +46,8 @@ export function findNote(
 	const range = rangeOf(midi, sampleRateHz);
 	const match = searchComb(peaks, range);
 	if (!match) return null;
-	const possible = Math.min(COMB_PARTIALS, Math.floor(range.highestHz / range.lowF1Hz));
+	let possible = 0;
+	while (possible < COMB_PARTIALS && partialOf(match, possible + 1) < range.highestHz) possible++;
 	const needed = Math.min(possible, Math.max(MIN_FOUND, Math.ceil(MIN_SHARE * possible)));
 	return match.found >= needed && match.score > 0 ? match : null;
 }
@@ -129,10 +130,37 @@ export function detectNote(
 		if (midi < 21 || midi > 108) continue;
 		const match = findNote(peaks, midi, sampleRateHz);
 		if (!match) continue;
-		const worth = match.score * explainedShare(peaks, match) ** 2;
+		const worth = worthOf(peaks, match);
 		if (!best || worth > best.worth) best = { midi: nearestNote(match), worth };
 	}
 	return best?.midi ?? null;
+}
+
+function worthOf(peaks: readonly SpectralPeak[], match: CombMatch): number {
+	return match.score * explainedShare(peaks, match) ** 2;
+}
+
+/** The named note's comb must be this much poorer before the person is doubted. */
+const DOUBT_SHARE = 0.75;
+
+/**
+ * The note that a sound rather is when it is not the named one; null when it may be the named one
+ * or nothing can be told. The comb of a wrongly named note can fit by chance, so it is compared
+ * with the best.
+ */
+export function otherNoteHeard(
+	samples: Float32Array,
+	sampleRateHz: number,
+	strike: Strike,
+	peaks: readonly SpectralPeak[],
+	midi: number
+): number | null {
+	const heard = detectNote(samples, sampleRateHz, strike, peaks);
+	if (heard === null || heard === midi) return null;
+	const named = findNote(peaks, midi, sampleRateHz);
+	const best = findNote(peaks, heard, sampleRateHz);
+	if (!named || !best) return heard;
+	return worthOf(peaks, named) < DOUBT_SHARE * worthOf(peaks, best) ? heard : null;
 }
 
 function nearestNote(match: CombMatch): number {

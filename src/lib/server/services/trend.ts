@@ -1,3 +1,5 @@
+import { median } from '../../drills/score';
+
 /**
  * What a run of daily medians says, in one word.
  *
@@ -27,12 +29,6 @@ function drift(values: readonly number[]): number {
 	}
 	const n = values.length;
 	return s / Math.sqrt((n * (n - 1) * (2 * n + 5)) / 18);
-}
-
-function median(values: readonly number[]): number {
-	const sorted = [...values].sort((a, b) => a - b);
-	const half = sorted.length >> 1;
-	return sorted.length % 2 === 1 ? sorted[half] : (sorted[half - 1] + sorted[half]) / 2;
 }
 
 /**
