@@ -26,7 +26,10 @@ export function partialOf(string: Stiffness, n: number): number {
 
 const B_STEPS = 26;
 const B_LOW = 2e-5;
+/** Greatest B searched; the top octaves' short strings go far beyond (up to about 0.02). */
 const B_HIGH = 4e-3;
+const B_HIGH_TREBLE = 3e-2;
+const TREBLE_HZ = 1000;
 
 /** Weight of a peak: its height above the floor, compressed, so that no partial rules alone. */
 function weightOf(peak: SpectralPeak): number {
@@ -85,14 +88,15 @@ function bestNear(peaks: readonly SpectralPeak[], hz: number, tolerance: number)
 }
 
 /**
- * The best comb with f_1 in a range and B between 2e-5 and 4e-3 (or none): a coarse grid, then
- * a finer one around its best place.
+ * The best comb with f_1 in a range and B between 2e-5 and 4e-3, above 1 kHz 3e-2 (or none): a
+ * coarse grid, then a finer one around its best place.
  */
 export function searchComb(peaks: readonly SpectralPeak[], range: CombRange): CombMatch | null {
 	if (peaks.length === 0) return null;
 	let best: CombMatch | null = null;
 	const cents = 1200 * Math.log2(range.highF1Hz / range.lowF1Hz);
 	const steps = Math.max(1, Math.ceil(cents / 3));
+	const bSpan = (range.lowF1Hz > TREBLE_HZ ? B_HIGH_TREBLE : B_HIGH) / B_LOW;
 	const consider = (f1Hz: number, inharmonicity: number, width: number): void => {
 		const f0Hz = f1Hz / Math.sqrt(1 + inharmonicity);
 		const match = scoreComb(peaks, { f0Hz, inharmonicity }, range, width);
@@ -101,12 +105,12 @@ export function searchComb(peaks: readonly SpectralPeak[], range: CombRange): Co
 	for (let i = 0; i <= steps; i++) {
 		const f1Hz = range.lowF1Hz * (range.highF1Hz / range.lowF1Hz) ** (i / steps);
 		for (let b = 0; b <= B_STEPS; b++) {
-			consider(f1Hz, b === 0 ? 0 : B_LOW * (B_HIGH / B_LOW) ** ((b - 1) / (B_STEPS - 1)), 6);
+			consider(f1Hz, b === 0 ? 0 : B_LOW * bSpan ** ((b - 1) / (B_STEPS - 1)), 6);
 		}
 	}
 	const coarse = best as CombMatch | null;
 	if (!coarse || coarse.found === 0) return null;
-	const ratio = (B_HIGH / B_LOW) ** (1 / (B_STEPS - 1));
+	const ratio = bSpan ** (1 / (B_STEPS - 1));
 	best = null;
 	for (let i = -8; i <= 8; i++) {
 		for (let b = -6; b <= 6; b++) {

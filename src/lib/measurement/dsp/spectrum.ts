@@ -70,7 +70,7 @@ export function runningFloorDb(spectrum: LevelSpectrum): Float64Array {
 
 /**
  * Peaks at least `minAboveFloorDb` above the running floor, in rising frequency.
- * A peak within a line's width of a stronger one and 25 dB below it is a side lobe and left out.
+ * What a stronger line's side lobes or skirt could make is left out.
  */
 export function findPeaks(
 	spectrum: LevelSpectrum,
@@ -98,14 +98,25 @@ export function findPeaks(
 	return withoutSideLobes(peaks, spectrum.lineWidthHz);
 }
 
+/** A line that decays within the window has a skirt this much above the window's side lobes. */
+const SKIRT_DB = 20;
+/** Further down lie rounding errors of a tone without noise. */
+const DEEPEST_DB = 110;
+
+/**
+ * Side lobes of a Hann window fall as 1/(π·d³), d in lines of the unpadded transform (Harris 1978,
+ * Proc. IEEE 66:51); a quarter of the main lobe's width is one line.
+ */
 function withoutSideLobes(peaks: SpectralPeak[], lineWidthHz: number): SpectralPeak[] {
-	return peaks.filter((peak, i) => {
-		for (const direction of [-1, 1]) {
-			for (let j = i + direction; j >= 0 && j < peaks.length; j += direction) {
-				if (Math.abs(peaks[j].frequencyHz - peak.frequencyHz) > 1.5 * lineWidthHz) break;
-				if (peaks[j].levelDb > peak.levelDb + 25) return false;
-			}
-		}
-		return true;
-	});
+	const loudest = peaks.reduce((max, peak) => Math.max(max, peak.levelDb), -Infinity);
+	const strong = peaks.filter((peak) => peak.levelDb > loudest - DEEPEST_DB);
+	return strong.filter((peak) =>
+		strong.every((other) => {
+			const over = other.levelDb - peak.levelDb;
+			if (over < 25) return true;
+			const lines = Math.abs(other.frequencyHz - peak.frequencyHz) / (lineWidthHz / 4);
+			if (lines < 6) return false;
+			return over < 20 * Math.log10(Math.PI * lines ** 3) - SKIRT_DB;
+		})
+	);
 }

@@ -80,7 +80,7 @@ function lengthOf(strike: Strike): number {
 export function clippedShare(samples: Float32Array): number {
 	let peak = 0;
 	for (const value of samples) peak = Math.max(peak, Math.abs(value));
-	if (peak < 0.1) return 0;
+	if (peak < 0.02) return 0;
 	const ceiling = peak * 0.9995;
 	let run = 0;
 	let clipped = 0;
