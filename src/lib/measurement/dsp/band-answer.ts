@@ -1,5 +1,6 @@
 import type { BandSignal } from './band';
 import type { SplitWindow } from './clusters';
+import type { OrderFit } from './orders';
 import type { ExpectedPlaces } from './rate-rule';
 import type { BandVerdict } from './verdict';
 
@@ -33,12 +34,16 @@ export const REASONS = {
 	several: 'Several strings move at once here; no single rate stands out.',
 	swell: 'A slow swell covers everything else here; let the sound ring longer or mute one string.',
 	uncertain: 'The rate is too uncertain here; let the sound ring longer.',
+	fewBeats: 'Too few beats were heard here; strike again and let the sound ring up to 8 seconds.',
+	noisy:
+		'Too much noise here to part the strings; bring the microphone nearer or make the room quieter.',
 	oneByOne: 'Too close to tell the two notes apart; strike the notes one after the other first.'
 } as const;
 
-/** The whole band as a window. */
-export function wholeWindow(band: BandSignal): SplitWindow {
-	return { rateHz: band.rateHz, from: 0, to: band.z.length / 2 - 1 };
+/** The whole band as a window; with a fit, what lies below its noise counts as not heard. */
+export function wholeWindow(band: BandSignal, order?: OrderFit): SplitWindow {
+	const floorPower = order && (order.rest.variance * 2 * band.passHz) / band.rateHz;
+	return { rateHz: band.rateHz, from: 0, to: band.z.length / 2 - 1, floorPower };
 }
 
 /** Puts an answer together; the window is the whole band unless one is given. */

@@ -28,6 +28,8 @@ export interface SplitWindow {
 	/** First and last sample used. */
 	from: number;
 	to: number;
+	/** Noise power within the band: what lies below it is not heard. */
+	floorPower?: number;
 }
 
 const VISIBLE_RIPPLE = 0.15;
@@ -105,7 +107,7 @@ function sumOf(parts: Component[], window: SplitWindow): Float64Array {
 function turningRate(
 	a: Float64Array,
 	b: Float64Array,
-	rateHz: number
+	{ rateHz, floorPower = 0 }: SplitWindow
 ): { rateHz: number; energyRateHz: number; visibleSeconds: number } {
 	let re = 0;
 	let im = 0;
@@ -121,6 +123,7 @@ function turningRate(
 		const powerB = b[n] ** 2 + b[n + 1] ** 2;
 		maxPower = Math.max(maxPower, powerA + powerB);
 	}
+	const floor = Math.max(maxPower * 10 ** (VISIBLE_LEVEL_DB / 10), floorPower);
 	for (let n = 0; n < a.length; n += 2) {
 		const power = a[n] ** 2 + a[n + 1] ** 2 + b[n] ** 2 + b[n + 1] ** 2 + 1e-300;
 		const uRe = (2 * (a[n] * b[n] + a[n + 1] * b[n + 1])) / power;
@@ -133,12 +136,7 @@ function turningRate(
 			loudRe += stepRe * Math.sqrt(power * previousPower);
 			loudIm += stepIm * Math.sqrt(power * previousPower);
 		}
-		if (
-			Math.hypot(uRe, uIm) >= VISIBLE_RIPPLE &&
-			power > maxPower * 10 ** (VISIBLE_LEVEL_DB / 10)
-		) {
-			visible++;
-		}
+		if (Math.hypot(uRe, uIm) >= VISIBLE_RIPPLE && power > floor) visible++;
 		[previousRe, previousIm, previousPower] = [uRe, uIm, power];
 	}
 	const scale = rateHz / (2 * Math.PI);
@@ -153,7 +151,7 @@ function turningRate(
 export function describeSplit(low: Component[], high: Component[], window: SplitWindow): Split {
 	const [lowHz, lowSpreadHz, lowEnergy] = centre(low, window);
 	const [highHz, highSpreadHz, highEnergy] = centre(high, window);
-	const turning = turningRate(sumOf(high, window), sumOf(low, window), window.rateHz);
+	const turning = turningRate(sumOf(high, window), sumOf(low, window), window);
 	const rateHz = Math.abs(turning.rateHz);
 	return {
 		rateHz,
@@ -196,12 +194,16 @@ export function allPairs(parts: readonly Component[], window: SplitWindow): Spli
 	return pairs;
 }
 
-/** Time from the window's start until the components' sum stays 30 dB below its greatest. */
+/**
+ * Time from the window's start until the components' sum stays 30 dB below its greatest, or below
+ * the noise.
+ */
 export function visibleSeconds(parts: Component[], window: SplitWindow): number {
 	const z = sumOf(parts, window);
 	let max = 0;
 	for (let n = 0; n < z.length; n += 2) max = Math.max(max, z[n] ** 2 + z[n + 1] ** 2);
+	const floor = Math.max(1e-3 * max, window.floorPower ?? 0);
 	let last = z.length - 2;
-	while (last > 0 && z[last] ** 2 + z[last + 1] ** 2 < 1e-3 * max) last -= 2;
+	while (last > 0 && z[last] ** 2 + z[last + 1] ** 2 < floor) last -= 2;
 	return (last / 2 + 1) / window.rateHz;
 }

@@ -10,6 +10,7 @@ import { audibleComponents, visibleSeconds, type SplitWindow } from './clusters'
 import { chooseOrder, fitNextOrder, refitFrom, type OrderFit, type OrderLimits } from './orders';
 import { intervalRate, unisonRate, type RuledRate, type Unruled } from './rate-rule';
 import { fisherSd, modelHalfWidth } from './rate-width';
+import type { Component } from './refine';
 import { beating, notMeasurable, still, type BandVerdict } from './verdict';
 
 const INTERVAL_WINDOW = [0.2, 2.7] as const;
@@ -25,7 +26,7 @@ export function modelAnswer(
 ): BandAnswer {
 	const interval = question.kind === 'interval';
 	const chosen = chooseOrder(band, fits, interval ? INTERVAL_LIMITS : UNISON_LIMITS);
-	const window = windowOf(band, question);
+	const window = windowOf(band, question, chosen);
 	const heard = audibleComponents(chosen.fit.components, window, -26, band.passHz + 2);
 	const done = (main: BandVerdict, others: BandVerdict[] = []): BandAnswer =>
 		bandAnswer(main, others, question, band, heard, window);
@@ -35,7 +36,10 @@ export function modelAnswer(
 	if (ruled === 'unclear') return done(notMeasurable(REASONS.several));
 	if (!ruled) {
 		if (interval) return done(notMeasurable(REASONS.oneByOne));
-		return done(still(1.5 / visibleSeconds(heard, window)));
+		return done(stillOrNoisy(heard, chosen, window));
+	}
+	if (ruled.split.cycles < fewestCycles(band, question)) {
+		return done(notMeasurable(REASONS.fewBeats));
 	}
 	const variants = variantRates(band, fits, chosen, question);
 	const near = variants.filter((rate) => rate !== null && agrees(rate, ruled)) as number[];
@@ -50,13 +54,35 @@ export function modelAnswer(
 	return done(beating(ruled.split.rateHz, half, null, REASONS.several));
 }
 
-function windowOf(band: BandSignal, question: BandQuestion): SplitWindow {
-	const whole = wholeWindow(band);
+const MIN_CYCLES = 1.5;
+/** Shorter than this, a string's own components (0.1 to 0.4 Hz apart) run into one. */
+const PARTING_SECONDS = 6;
+
+/** Cycles that must be seen before a rate is believed: more in a short window. */
+function fewestCycles(band: BandSignal, { kind }: BandQuestion): number {
+	const seconds = band.z.length / 2 / band.rateHz;
+	return kind === 'interval' ? MIN_CYCLES : MIN_CYCLES * Math.max(1, PARTING_SECONDS / seconds);
+}
+
+/** A second component 20 dB below the first makes a beat that can be heard. */
+const SECOND_SHARE = 0.01;
+const OVER_NOISE = 20;
+
+/** `still`, limited to 1.5 cycles in the time heard; not where noise could hide a second string. */
+function stillOrNoisy(heard: Component[], order: OrderFit, window: SplitWindow): BandVerdict {
+	const strongest = Math.max(...heard.map(({ energy }) => energy));
+	const hidden = SECOND_SHARE * strongest < OVER_NOISE * order.rest.variance;
+	if (hidden) return notMeasurable(REASONS.noisy);
+	return still(MIN_CYCLES / visibleSeconds(heard, window));
+}
+
+function windowOf(band: BandSignal, question: BandQuestion, order?: OrderFit): SplitWindow {
+	const whole = wholeWindow(band, order);
 	if (question.kind === 'unison') return whole;
 	const offset = band.startSeconds - question.strikeSeconds;
 	const from = Math.max(0, Math.round((INTERVAL_WINDOW[0] - offset) * band.rateHz));
 	const to = Math.min(whole.to, Math.round((INTERVAL_WINDOW[1] - offset) * band.rateHz));
-	return to - from > 16 ? { rateHz: band.rateHz, from, to } : whole;
+	return to - from > 16 ? { ...whole, from, to } : whole;
 }
 
 function ruledRate(
@@ -64,7 +90,7 @@ function ruledRate(
 	fit: OrderFit,
 	question: BandQuestion
 ): RuledRate | Unruled | null {
-	const window = windowOf(band, question);
+	const window = windowOf(band, question, fit);
 	const maxHz = band.passHz + 2;
 	if (question.kind === 'unison') return unisonRate(fit, window, maxHz);
 	const shifted = question.expected && {
