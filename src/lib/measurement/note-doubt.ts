@@ -1,5 +1,5 @@
-import { noteName } from '../acoustics/units';
-import { detectNote, tonePeaks } from './dsp/note-finder';
+import { otherNoteSentence } from './dsp/note-doubt';
+import { otherNoteHeard, tonePeaks } from './dsp/note-finder';
 import type { Strike } from './dsp/strike';
 
 /**
@@ -13,7 +13,6 @@ export function noteDoubt(
 	midi: number
 ): string | null {
 	const peaks = tonePeaks(samples, sampleRateHz, strike);
-	const heard = detectNote(samples, sampleRateHz, strike, peaks);
-	if (heard === null || heard === midi) return null;
-	return `This sounds like ${noteName(heard)}. Was it ${noteName(midi)} that you struck?`;
+	const heard = otherNoteHeard(samples, sampleRateHz, strike, peaks, midi);
+	return heard === null ? null : otherNoteSentence(heard, midi);
 }

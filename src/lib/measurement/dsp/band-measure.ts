@@ -6,7 +6,7 @@ import type { OrderFit } from './orders';
 import { notMeasurable } from './verdict';
 
 const SKIP_SECONDS = 0.08;
-const SHORTEST_SECONDS = 0.35;
+const SHORTEST_SECONDS = 0.28;
 /** A component's energy over that of the noise's highest line (15 dB). */
 const TONE_OVER_NOISE = 32;
 

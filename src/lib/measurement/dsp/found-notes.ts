@@ -20,7 +20,12 @@ export function findNotes(
 	midis: number[],
 	sampleRateHz: number
 ): FoundNote[] {
-	const matches = midis.map((midi) => findNote(peaks, midi, sampleRateHz));
+	const combs = midis.map((midi) => findNote(peaks, midi, sampleRateHz));
+	const matches = combs.map((match, i) => {
+		if (midis.length === 1) return match ?? pureTone(peaks, midis[i]);
+		const other = combs[1 - i];
+		return match && other && !hasOwnPartials(peaks, match, other) ? null : match;
+	});
 	return midis.map((midi, i) => {
 		const match = matches[i];
 		const other = matches.length === 2 ? matches[1 - i] : null;
@@ -28,6 +33,35 @@ export function findNotes(
 		const fit = match && fitNote(peaks, match, sampleRateHz, skip);
 		return { midi, match, fit, firstPartialHz: match && firstPartial(peaks, match, skip) };
 	});
+}
+
+/** A pure tone stands this far above everything else. */
+const PURE_DB = 20;
+const PURE_OVER_FLOOR_DB = 35;
+const PURE_CENTS = 60;
+
+/** A fork, or a string of which only one partial is heard: one line at the note's own place. */
+function pureTone(peaks: SpectralPeak[], midi: number): CombMatch | null {
+	const [first, second] = peaks.slice().sort((a, b) => b.levelDb - a.levelDb);
+	if (!first || first.aboveFloorDb < PURE_OVER_FLOOR_DB) return null;
+	if (second && second.levelDb > first.levelDb - PURE_DB) return null;
+	const f0Hz = first.frequencyHz;
+	if (Math.abs(centsBetween(f0Hz, equalTemperamentHz(midi))) > PURE_CENTS) return null;
+	return { f0Hz, inharmonicity: 0, score: 0, found: 1 };
+}
+
+const LOW_PARTIALS = 6;
+
+/**
+ * Whether a note of an interval sounds itself: some of the low partials that it does not share
+ * with the other note are there. A note that shares all of them cannot be told.
+ */
+function hasOwnPartials(peaks: SpectralPeak[], match: CombMatch, other: CombMatch): boolean {
+	const skip = (_n: number, hz: number): boolean => meets(other, hz);
+	let own = 0;
+	for (let n = 1; n <= LOW_PARTIALS; n++) if (!skip(n, partialOf(match, n))) own++;
+	const heard = readPartials(peaks, match, LOW_PARTIALS, HIGHEST_HZ, skip).length;
+	return own < 2 || 3 * heard >= own;
 }
 
 function firstPartial(

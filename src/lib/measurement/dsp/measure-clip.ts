@@ -1,10 +1,12 @@
 import { noteName } from '../../acoustics/units';
 import type { MeasureOptions, MeasureResult, PairMeasure } from '../types';
-import { clipSpectrum, type ClipSpectrum } from './band';
-import type { BandAnswer } from './band-answer';
+import { bandShape, clipSpectrum, type ClipSpectrum } from './band';
+import { REASONS, type BandAnswer } from './band-answer';
 import { measureBand } from './band-measure';
 import { describeNote, findNotes, type FoundNote } from './found-notes';
-import { detectNote, tonePeaks } from './note-finder';
+import { detectNote, otherNoteHeard, tonePeaks } from './note-finder';
+import { coincidencesOf } from './coincidences';
+import { otherNoteSentence } from './note-doubt';
 import { questionsFor, type PairQuestion } from './pair-questions';
 import type { SpectralPeak } from './spectrum';
 import { clippedShare, findStrike, type Strike } from './strike';
@@ -13,6 +15,11 @@ import { notMeasurable, type BandVerdict } from './verdict';
 const MAX_SECONDS = 8;
 const CLIPPED_SHARE = 2e-4;
 const CLIPPED = 'The recording is driven into its limit; set the input lower and strike again.';
+const NO_MEETING =
+	'No partials of these two notes meet below the 17th of the lower one, so there is no beat to measure.';
+const TOO_FEW = 'has too few partials here to measure its stiffness.';
+const TOO_FEW_OWN =
+	'has too few partials of its own here; strike it alone to measure its pitch and stiffness.';
 const NO_STRIKE = 'No struck tone was heard.';
 
 /**
@@ -31,14 +38,15 @@ export function measureClip(
 	const peaks = strike ? tonePeaks(samples, sampleRateHz, strike) : [];
 	const midis = namedNotes(samples, sampleRateHz, options, strike, peaks);
 	if (midis.length === 0) return { notes: [], pairs: [], advice: [NO_STRIKE] };
-	const found = findNotes(peaks, midis, sampleRateHz);
-	const advice = adviceFor(samples, strike, found);
+	const other = strike && otherThanNamed(samples, sampleRateHz, options, strike, peaks);
+	const found = other ? midis.map(unfound) : findNotes(peaks, midis, sampleRateHz);
+	const advice = adviceFor(samples, strike, found, other);
 	const notes = found.map(describeNote);
 	const usable = strike && found.every(({ match }) => match) ? strike : null;
 	const clip = usable && strikeClip(samples, sampleRateHz, usable);
 	const clipped = clippedShare(samples) > CLIPPED_SHARE;
 	const pairs = questionsFor(found, sampleRateHz).flatMap((question) => {
-		if (!clip) return [unheard(question, NO_STRIKE)];
+		if (!clip) return [unheard(question, strike ? advice[advice.length - 1] : NO_STRIKE)];
 		if (clipped) return [unheard(question, CLIPPED)];
 		return options.kind === 'interval'
 			? measurePair(clip, question, 'interval')
@@ -75,16 +83,39 @@ function namedNotes(
 	return midi === null ? [] : [midi];
 }
 
-function adviceFor(samples: Float32Array, strike: Strike | null, found: FoundNote[]): string[] {
+/** The note that sounds in place of the one named, when one was named. */
+function otherThanNamed(
+	samples: Float32Array,
+	sampleRateHz: number,
+	{ kind, notes }: MeasureOptions,
+	strike: Strike,
+	peaks: SpectralPeak[]
+): number | null {
+	if (kind === 'interval' || notes?.length !== 1) return null;
+	return otherNoteHeard(samples, sampleRateHz, strike, peaks, notes[0]);
+}
+
+function unfound(midi: number): FoundNote {
+	return { midi, match: null, fit: null, firstPartialHz: null };
+}
+
+function adviceFor(
+	samples: Float32Array,
+	strike: Strike | null,
+	found: FoundNote[],
+	other: number | null
+): string[] {
 	const advice: string[] = [];
 	if (!strike) return [NO_STRIKE];
 	if (clippedShare(samples) > CLIPPED_SHARE) advice.push(CLIPPED);
+	if (other !== null) return [...advice, otherNoteSentence(other, found[0].midi)];
+	if (found.length === 2 && coincidencesOf(found[0].midi, found[1].midi).length === 0) {
+		advice.push(NO_MEETING);
+	}
 	for (const { midi, match, fit } of found) {
 		if (!match) advice.push(`${noteName(midi)} was not found in this sound.`);
 		else if (!fit) {
-			advice.push(
-				`${noteName(midi)} has too few partials of its own here; strike it alone to measure its pitch and stiffness.`
-			);
+			advice.push(`${noteName(midi)} ${found.length === 1 ? TOO_FEW : TOO_FEW_OWN}`);
 		}
 	}
 	return advice;
@@ -114,6 +145,9 @@ function measurePair(
 	question: PairQuestion,
 	kind: 'unison' | 'interval'
 ): PairMeasure[] {
+	const { passHz } = bandShape(question.spacingHz);
+	const apartHz = Math.abs(question.highHz - question.lowHz);
+	if (question.known && apartHz > 2 * passHz) return [unheard(question, tooFast(apartHz, passHz))];
 	const middle = (question.lowHz + question.highHz) / 2;
 	const expected =
 		kind === 'interval' && question.known
@@ -136,29 +170,36 @@ function measurePair(
 	);
 }
 
+function tooFast(rateHz: number, passHz: number): string {
+	return `The two partials are about ${rateHz.toFixed(0)} Hz apart here; no beat faster than ${(2 * passHz).toFixed(0)} per second can be shown.`;
+}
+
 const FAR_APART = 'The strings are too far apart here to beat; bring them nearer first.';
 const BAND_HZ = 20;
 const AUDIBLE_DB = 26;
+/** A peak this far above the floor is no chance peak of noise. */
+const SURE_DB = 20;
 
 /**
  * `still` speaks of the band around the partial: where a second string sounds beyond it, that is
- * said instead.
+ * said instead, and so it is where nothing could be told.
  */
 function unlessFarApart(
 	pairs: PairMeasure[],
 	question: PairQuestion,
 	peaks: readonly SpectralPeak[]
 ): PairMeasure[] {
-	if (pairs[0].verdict !== 'still') return pairs;
+	if (pairs[0].verdict !== 'still' && pairs[0].reason !== REASONS.several) return pairs;
 	const middle = question.lowHz;
 	const near = peaks.filter(
-		({ frequencyHz }) => Math.abs(frequencyHz - middle) < 0.5 * question.spacingHz
+		({ frequencyHz, aboveFloorDb }) =>
+			aboveFloorDb > SURE_DB && Math.abs(frequencyHz - middle) < 0.5 * question.spacingHz
 	);
 	const level = (inside: boolean): number =>
 		near
 			.filter(({ frequencyHz }) => Math.abs(frequencyHz - middle) <= BAND_HZ === inside)
 			.reduce((max, peak) => Math.max(max, peak.levelDb), -Infinity);
-	if (level(false) < level(true) - AUDIBLE_DB) return pairs;
+	if (level(false) === -Infinity || level(false) < level(true) - AUDIBLE_DB) return pairs;
 	return [{ ...pairs[0], ...notMeasurable(FAR_APART) }];
 }
 

@@ -1,11 +1,10 @@
-import { coincidentPairs } from '../../acoustics/intervals';
 import { equalTemperamentHz } from '../../acoustics/units';
+import { coincidencesOf } from './coincidences';
 import { partialOf, type Stiffness } from './comb';
 import type { FoundNote } from './found-notes';
 import { HIGHEST_HZ } from './note-finder';
 
 const UNISON_PARTIALS = 8;
-const INTERVAL_PARTIALS = 16;
 
 /** A pair of partials to be measured. */
 export interface PairQuestion {
@@ -24,7 +23,7 @@ export function questionsFor(found: FoundNote[], sampleRateHz: number): PairQues
 	const strings = found.map(stringOf);
 	if (found.length === 1) return unisonQuestions(strings[0], highest);
 	const [low, high] = strings;
-	return coincidentPairs(found[0].midi, found[1].midi, INTERVAL_PARTIALS)
+	return coincidencesOf(found[0].midi, found[1].midi)
 		.map(({ lowerPartial, upperPartial }) => ({
 			lowerPartial,
 			upperPartial,
