@@ -37,6 +37,35 @@ test('an admin makes an account; its owner chooses a password by the letter', as
 	);
 });
 
+test('a forgotten password is chosen anew by a letter, which ends every session', async ({
+	visit
+}) => {
+	const signedIn = await visit(ODA, '/today');
+	const page = await visit(null, '/forgot');
+	const answers: string[] = [];
+	for (const address of [`nobody.${run}@harbour.example`, ODA.email]) {
+		await page.getByLabel('E-mail address of your account').fill(address);
+		await page.getByRole('button', { name: 'Send the link' }).click();
+		const note = page.getByRole('status').filter({ hasText: address });
+		answers.push(((await note.textContent()) ?? '').replace(address, ''));
+	}
+	expect(answers[0], 'nobody learns who has an account').toBe(answers[1]);
+	const letter = await letterTo(ODA.email, /Choose a new password/);
+	await go(page, letter.links[0]);
+	ODA.password = 'the-tide-comes-back-again-6';
+	await page.getByLabel('New password').fill(ODA.password);
+	await page.getByRole('button', { name: 'Keep this password' }).click();
+	await expect(page).toHaveURL(/\/today$/);
+	await go(signedIn, '/progress');
+	await expect(signedIn, 'the older session is over').toHaveURL(/\/sign-in/);
+	await signIn(signedIn, ODA);
+	await expect(signedIn).toHaveURL(/\/progress$/);
+	await go(page, letter.links[0]);
+	await expect(page.getByRole('heading', { level: 1 })).toHaveText(
+		'This link does not work any more'
+	);
+});
+
 test('a role changed and an account closed take effect at once', async ({ visit, expectFault }) => {
 	expectFault(/status of 401/);
 	const owner = await visit(ODA, '/today');

@@ -1,4 +1,4 @@
-import type { APIResponse, Page } from '@playwright/test';
+import type { APIRequestContext, APIResponse, Page } from '@playwright/test';
 import { randomUUID } from 'node:crypto';
 import { playedAttempt } from '../support/played';
 import {
@@ -24,15 +24,13 @@ async function placesOf(page: Page, name: string): Promise<{ klass: string; pupi
 	return { klass: pupil.split('/students/')[0], pupil };
 }
 
-async function newestAttempt(page: Page): Promise<string> {
-	const list = (await (await page.request.get('/api/attempts')).json()) as {
-		attempts: { id: string }[];
-	};
-	return list.attempts[0].id;
+async function ownAttempts(person: APIRequestContext): Promise<string[]> {
+	const answer = await person.get('/api/attempts');
+	return ((await answer.json()) as { attempts: { id: string }[] }).attempts.map(({ id }) => id);
 }
 
-const send = (page: Page, attempt: unknown, headers: Record<string, string> = {}) =>
-	page.request.post('/api/attempts', { data: attempt, headers });
+const send = (person: APIRequestContext, attempt: unknown, headers: Record<string, string> = {}) =>
+	person.post('/api/attempts', { data: attempt, headers });
 
 async function expectProblem(answer: APIResponse, status: number) {
 	expect(answer.status(), await answer.text()).toBe(status);
@@ -40,7 +38,7 @@ async function expectProblem(answer: APIResponse, status: number) {
 	expect(await answer.json()).toMatchObject({ status, title: expect.any(String) });
 }
 
-test('pages of another role are closed', async ({ visit, expectFault }) => {
+test('pages of another role are closed', async ({ ask, visit, expectFault }) => {
 	expectFault(/status of 403/);
 	const closed: [Person | null, number, string[]][] = [
 		[
@@ -53,39 +51,40 @@ test('pages of another role are closed', async ({ visit, expectFault }) => {
 		[ADMIN, 403, ['/today', '/practice/unison', '/string-check', '/progress', '/classes']]
 	];
 	for (const [who, status, paths] of closed) {
-		const page = await visit(who);
+		const person = await ask(who);
 		for (const path of paths) {
-			const answer = await page.request.get(path, asPage);
+			const answer = await person.get(path, asPage);
 			expect(answer.status(), `${who?.email ?? 'a stranger'} at ${path}`).toBe(status);
 			if (status === 303) expect(answer.headers().location).toMatch(/^\/sign-in\?redirectTo=/);
 		}
-		if (who === ADMIN) await expectProblem(await page.request.get('/api/attempts'), 403);
-		if (!who) await expectProblem(await page.request.get('/api/attempts'), 401);
-		if (!who) await expectProblem(await send(page, playedAttempt()), 401);
 	}
+	await expectProblem(await (await ask(ADMIN)).get('/api/attempts'), 403);
+	await expectProblem(await (await ask(null)).get('/api/attempts'), 401);
+	await expectProblem(await send(await ask(null), playedAttempt()), 401);
 	const page = await visit(student('mirabel'), '/classes');
 	await expect(page.getByRole('heading', { level: 1 })).toHaveText('This page is not yours.');
 });
 
 test("another class, another class's student and another student's attempt are not there", async ({
+	ask,
 	visit
 }) => {
 	const jory = student('jory');
-	const attempt = await newestAttempt(await visit(jory));
+	const [attempt] = await ownAttempts(await ask(jory));
 	const teacher = await visit(TEACHER, '/classes');
 	const { klass, pupil } = await placesOf(teacher, jory.name);
 	expect((await teacher.request.get(`${pupil}/attempts/${attempt}`, asPage)).status()).toBe(200);
 
-	const colleague = await visit(COLLEAGUE, '/classes');
+	const colleague = await ask(COLLEAGUE);
 	for (const path of [klass, pupil, `${pupil}/attempts/${attempt}`]) {
-		expect((await colleague.request.get(path, asPage)).status(), path).toBe(404);
+		expect((await colleague.get(path, asPage)).status(), path).toBe(404);
 	}
-	const other = await visit(student('mirabel'));
+	const other = await ask(student('mirabel'));
 	for (const id of [attempt, randomUUID(), 'not-an-id']) {
-		const answer = await other.request.get(`/practice/attempts/${id}`, asPage);
+		const answer = await other.get(`/practice/attempts/${id}`, asPage);
 		expect(answer.status(), id).toBe(404);
 	}
-	const remark = await colleague.request.post(`${pupil}?/remark`, {
+	const remark = await colleague.post(`${pupil}?/remark`, {
 		form: { text: 'Not mine to say.', attemptId: '' },
 		headers: { origin: origin(), accept: 'application/json' }
 	});
@@ -95,34 +94,29 @@ test("another class, another class's student and another student's attempt are n
 });
 
 test('an attempt sent twice is stored once; what is changed under its id is refused', async ({
-	visit
+	ask
 }) => {
-	const page = await visit(student('mirabel'));
+	const mirabel = await ask(student('mirabel'));
 	const attempt = playedAttempt({ finishedAt: new Date() });
-	const count = async () => {
-		const list = (await (await page.request.get('/api/attempts')).json()) as {
-			attempts: { id: string }[];
-		};
-		return list.attempts.filter(({ id }) => id === attempt.id).length;
-	};
-	const first = await send(page, attempt);
+	const first = await send(mirabel, attempt);
 	expect(first.status()).toBe(201);
-	const second = await send(page, attempt);
+	const second = await send(mirabel, attempt);
 	expect(second.status()).toBe(200);
 	expect(await second.json()).toEqual(await first.json());
 	const other = playedAttempt({ id: attempt.id, finishedAt: new Date(), leftCents: () => 0 });
-	await expectProblem(await send(page, other), 409);
-	expect(await count()).toBe(1);
-	const thief = await visit(student('ansel'));
+	await expectProblem(await send(mirabel, other), 409);
+	expect((await ownAttempts(mirabel)).filter((id) => id === attempt.id)).toHaveLength(1);
+	const thief = await ask(student('ansel'));
 	await expectProblem(await send(thief, attempt), 404);
 	const owner = { 'x-student-id': randomUUID() };
-	await expectProblem(await send(page, playedAttempt(), owner), 401);
+	await expectProblem(await send(mirabel, playedAttempt(), owner), 401);
 });
 
 test('what cannot have happened is refused; a score of the own making is replaced and noted', async ({
+	ask,
 	visit
 }) => {
-	const page = await visit(student('mirabel'));
+	const mirabel = await ask(student('mirabel'));
 	const honest = playedAttempt({ finishedAt: new Date() });
 	const [trial, ...rest] = honest.trials;
 	const easier = honest.stimulus.trials.map((spec) => ({ ...spec, startCents: 0 }));
@@ -140,19 +134,17 @@ test('what cannot have happened is refused; a score of the own making is replace
 		[]
 	];
 	for (const body of tampered) {
-		await expectProblem(await send(page, { ...(body as object), id: randomUUID() }), 422);
+		await expectProblem(await send(mirabel, { ...(body as object), id: randomUUID() }), 422);
 	}
 	const broken = { 'content-type': 'application/json' };
-	await expectProblem(await send(page, Buffer.from('{"id":'), broken), 400);
+	await expectProblem(await send(mirabel, Buffer.from('{"id":'), broken), 400);
 	await expectProblem(
-		await send(page, 'id=1', { 'content-type': 'text/plain', origin: origin() }),
+		await send(mirabel, 'id=1', { 'content-type': 'text/plain', origin: origin() }),
 		415
 	);
-	const padded = { ...honest, padding: 'x'.repeat(1_300_000) };
-	expect((await send(page, padded)).status()).toBe(413);
 
 	const boast = { ...playedAttempt({ finishedAt: new Date() }), clientScore: 0 };
-	const answer = await send(page, boast);
+	const answer = await send(mirabel, boast);
 	expect(answer.status()).toBe(201);
 	const stored = (await answer.json()) as { score: number; scoreFlagged: boolean };
 	expect(stored.scoreFlagged).toBe(true);
@@ -163,13 +155,19 @@ test('what cannot have happened is refused; a score of the own making is replace
 	);
 });
 
+test('an attempt too large to be one is refused unread', async ({ ask }) => {
+	const mirabel = await ask(student('mirabel'));
+	const padded = { ...playedAttempt(), padding: 'x'.repeat(1_600_000) };
+	expect((await send(mirabel, padded)).status()).toBe(413);
+});
+
 test('requests that another site causes are refused', async ({ visit, expectFault }) => {
 	expectFault(/status of 403|favicon/);
 	const page = await visit(student('ansel'));
 	const elsewhere = { origin: 'https://elsewhere.example' };
-	await expectProblem(await send(page, playedAttempt(), elsewhere), 403);
+	await expectProblem(await send(page.request, playedAttempt(), elsewhere), 403);
 	const site = { 'sec-fetch-site': 'cross-site' };
-	await expectProblem(await send(page, playedAttempt(), site), 403);
+	await expectProblem(await send(page.request, playedAttempt(), site), 403);
 	const form = { form: { name: 'Somebody Else' }, headers: elsewhere };
 	expect((await page.request.post('/account?/name', form)).status()).toBe(403);
 

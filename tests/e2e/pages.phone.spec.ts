@@ -3,7 +3,7 @@ import { expectAccessible } from './axe';
 import { onward } from './bench';
 import { shot, TOURS } from './pages';
 import { expectSound } from './sound';
-import { expect, go, ready, student, test } from './support';
+import { expect, go, ready, student, TEACHER, test } from './support';
 
 /** How far the page reaches beyond the screen, and what does, for the message. */
 async function expectNoSideways(page: Page, where: string): Promise<void> {
@@ -32,6 +32,18 @@ for (const { role, who, places } of TOURS) {
 		}
 	});
 }
+
+test('in a table each cell stands beside its head', async ({ visit }) => {
+	const page = await visit(TEACHER, '/classes');
+	await page.getByRole('link', { name: 'Open Evening class, first term' }).tap();
+	const cells = page.getByRole('cell').filter({ hasText: /^\s*\d+, \d+\s*$/ });
+	await expect(cells).toHaveCount(6);
+	for (const cell of await cells.all()) {
+		const [outer, inner] = [await cell.boundingBox(), await cell.locator('.cell').boundingBox()];
+		expect(inner?.x, 'to the right of the head').toBeGreaterThan((outer?.x ?? 0) + 90);
+		expect(outer?.height, 'on one line').toBeLessThan(40);
+	}
+});
 
 test('the rooms fold into a menu', async ({ visit }) => {
 	const page = await visit(student('jory'), '/today');

@@ -61,14 +61,14 @@ export const TOURS: readonly Tour[] = [
 				{ name: 'class', path: pupil.split('/students/')[0] },
 				{ name: 'class-student', path: pupil },
 				{ name: 'class-attempt', path: attempt },
-				...['/today', '/progress', '/account'].map(place)
+				place('/today')
 			];
 		}
 	},
 	{
 		role: 'admin',
 		who: ADMIN,
-		places: async () => ['/admin/users', '/admin/mail', '/admin/audit', '/account'].map(place)
+		places: async () => ['/admin/users', '/admin/mail', '/admin/audit'].map(place)
 	}
 ];
 

@@ -1,11 +1,13 @@
 /** What the browser tests share: people who are signed in, faults that are noticed, letters that came. */
 import {
 	test as base,
+	type APIRequestContext,
 	expect,
 	type Browser,
 	type BrowserContext,
 	type Page
 } from '@playwright/test';
+import { createHash } from 'node:crypto';
 import { existsSync, mkdirSync, readdirSync, readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import {
@@ -36,15 +38,22 @@ export function student(key: string): (typeof STUDENTS)[number] {
 interface Fixtures {
 	/** Names a console or page error that this test causes on purpose. */
 	expectFault: (pattern: RegExp) => void;
+	/** Asks the server as a browser without a page would, with a person's cookies or a stranger's. */
+	ask: (who: Person | null) => Promise<APIRequestContext>;
 	/** A fresh browser: a stranger's (null) or a person's who is signed in; opens `path`. */
 	visit: (who: Person | null, path?: string) => Promise<Page>;
+}
+
+interface Underneath {
+	faults: { seen: string[]; expected: RegExp[] };
+	open: (who: Person | null) => Promise<BrowserContext>;
 }
 
 /**
  * Every page of every test is watched: an error on the console, an uncaught one, or a breach of the
  * content policy fails the test unless it was expected.
  */
-export const test = base.extend<Fixtures & { faults: { seen: string[]; expected: RegExp[] } }>({
+export const test = base.extend<Fixtures & Underneath>({
 	// Playwright finds out what a fixture needs by reading this pattern.
 	// eslint-disable-next-line no-empty-pattern
 	faults: async ({}, use) => {
@@ -56,21 +65,29 @@ export const test = base.extend<Fixtures & { faults: { seen: string[]; expected:
 	expectFault: async ({ faults }, use) => {
 		await use((pattern) => void faults.expected.push(pattern));
 	},
-	visit: async ({ browser, faults }, use, testInfo) => {
+	open: async ({ browser }, use, testInfo) => {
 		const opened: BrowserContext[] = [];
-		await use(async (who, path = '/') => {
-			const storageState = who
-				? await session(browser, who, join(testInfo.project.outputDir, '.sessions'))
-				: undefined;
+		const folder = join(testInfo.project.outputDir, '.sessions');
+		await use(async (who) => {
+			const storageState = who ? await session(browser, who, folder) : undefined;
 			const context = await browser.newContext({ storageState });
 			opened.push(context);
+			return context;
+		});
+		for (const context of opened) await context.close();
+	},
+	ask: async ({ open }, use) => {
+		await use(async (who) => (await open(who)).request);
+	},
+	visit: async ({ open, faults }, use) => {
+		await use(async (who, path = '/') => {
+			const context = await open(who);
 			watch(context, faults.seen);
 			await context.addInitScript(tapLoudspeaker);
 			const page = await context.newPage();
 			await go(page, path);
 			return page;
 		});
-		for (const context of opened) await context.close();
 	}
 });
 
@@ -83,11 +100,12 @@ function watch(context: BrowserContext, seen: string[]): void {
 
 /** The cookies of a signed-in person; signs in once a run, as often as there are people. */
 async function session(browser: Browser, who: Person, folder: string): Promise<string> {
-	const file = join(folder, `${who.email}.json`);
+	const { email, password } = who;
+	const key = createHash('sha256').update(password).digest('hex').slice(0, 8);
+	const file = join(folder, `${email}-${key}.json`);
 	if (existsSync(file)) return file;
 	mkdirSync(folder, { recursive: true });
 	const context = await browser.newContext();
-	const { email, password } = who;
 	const answer = await context.request.post('/sign-in', {
 		form: { email, password, redirectTo: '' },
 		headers: { origin: origin(), accept: 'text/html' }

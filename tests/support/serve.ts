@@ -41,6 +41,11 @@ async function stop() {
 	await application.stop();
 	process.exit(0);
 }
+void application.ended.then((code) => {
+	if (stopping) return;
+	process.stderr.write(`The server ended by itself (${code}).\n`);
+	void stop();
+});
 process.stdin.resume();
 process.stdin.on('end', stop);
 process.stdin.on('close', stop);
