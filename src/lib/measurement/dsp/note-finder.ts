@@ -166,9 +166,3 @@ export function otherNoteHeard(
 function nearestNote(match: CombMatch): number {
 	return midiOf(partialOf(match, 1));
 }
-
-/** Whether a peak stands within `reachHz` of a frequency. */
-export function hasPeakNear(peaks: readonly SpectralPeak[], hz: number, reachHz: number): boolean {
-	const i = nearestPeak(peaks, hz);
-	return i >= 0 && Math.abs(peaks[i].frequencyHz - hz) <= reachHz;
-}
