@@ -3,6 +3,21 @@ import { env } from '../env';
 
 let transport: { url: string; transporter: Transporter } | undefined;
 
+/** How long the mail server may say nothing, milliseconds. */
+const TIMEOUTS = { connectionTimeout: 10_000, greetingTimeout: 10_000, socketTimeout: 20_000 };
+
+/**
+ * SMTP_URL with the timeouts that it does not set itself. Each mail waits for the one before it: a
+ * server that says nothing must not hold them all. nodemailer takes them from the address alone.
+ */
+export function withTimeouts(url: string): string {
+	const whole = new URL(url);
+	for (const [name, value] of Object.entries(TIMEOUTS)) {
+		if (!whole.searchParams.has(name)) whole.searchParams.set(name, String(value));
+	}
+	return whole.href;
+}
+
 /**
  * Hands one mail to the SMTP server of SMTP_URL.
  * @throws what the server or the network answered.
@@ -17,12 +32,8 @@ export async function sendBySmtp(mail: {
 	const { SMTP_URL: url, MAIL_FROM: from } = env();
 	if (transport?.url !== url) {
 		transport?.transporter.close();
-		const transporter = createTransport(url, {
+		const transporter = createTransport(withTimeouts(url), {
 			from,
-			// Each mail waits for the one before it: a server that says nothing must not hold them all.
-			connectionTimeout: 10_000,
-			greetingTimeout: 10_000,
-			socketTimeout: 20_000,
 			// A recipient is an address, never a path or a link to fetch.
 			disableFileAccess: true,
 			disableUrlAccess: true
