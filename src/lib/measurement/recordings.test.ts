@@ -106,6 +106,19 @@ describe('real recordings', () => {
 		expect(overlapping.length / rated.length).toBeGreaterThanOrEqual(0.95);
 	});
 
+	it('never give a wrong answer in the first 4 s on rows of confidence A', async () => {
+		const short = (await scoreRecordings(FOLDER, '', 4)).flatMap((clip) => clip.rows);
+		const sure = short.filter(({ row }) => row.confidence === 'A');
+		const wrong = sure.filter(({ outcome }) => outcome === 'wrong');
+		expect(wrong.map(({ row }) => `${row.file} ${row.lowerPartial}`)).toEqual([]);
+		const right = (kind: string): ScoredRow[] =>
+			sure.filter(
+				({ row, outcome }) => row.kind === kind && row.class === 'beat' && outcome === 'right'
+			);
+		expect(right('interval').length).toBeGreaterThanOrEqual(3);
+		expect(right('shift').length).toBeGreaterThanOrEqual(15);
+	}, 120_000);
+
 	it('never call an interval still', () => {
 		for (const clip of clips.filter(({ kind }) => kind === 'interval')) {
 			for (const pair of clip.result.pairs) expect(pair.verdict, clip.file).not.toBe('still');

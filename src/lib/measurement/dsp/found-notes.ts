@@ -85,8 +85,10 @@ function meets(other: Stiffness, hz: number): boolean {
 export function describeNote({ midi, fit, firstPartialHz }: FoundNote): NoteMeasure {
 	const note = noteName(midi);
 	if (!fit) return describeUnfitted(note, midi, firstPartialHz);
-	const f1 = 2 * fit.f1Sd;
-	const b = 2 * fit.inharmonicitySd;
+	// Without a low partial of its own the note is told from far up the series: less sure.
+	const far = Math.min(...fit.readings.map(({ n }) => n)) > LOWEST_OWN;
+	const f1 = Math.hypot(2 * fit.f1Sd, far ? fit.f1Hz * (ratioFromCents(FAR_CENTS) - 1) : 0);
+	const b = Math.hypot(2 * fit.inharmonicitySd, far ? FAR_SHARE * fit.inharmonicity : 0);
 	return {
 		note,
 		f1Hz: fit.f1Hz,
@@ -96,6 +98,11 @@ export function describeNote({ midi, fit, firstPartialHz }: FoundNote): NoteMeas
 		centsFromEqual: centsBetween(fit.f1Hz, equalTemperamentHz(midi))
 	};
 }
+
+/** A note read from partials above this alone, as an octave's upper one, and what that costs. */
+const LOWEST_OWN = 4;
+const FAR_CENTS = 10;
+const FAR_SHARE = 0.2;
 
 /** Half-width of a pitch read off one peak, where several strings may pull it about. */
 const ONE_PEAK_CENTS = 2;

@@ -30,7 +30,7 @@ describe('two strings', () => {
 		let asked = 0;
 		for (const midi of [45, 57, 69]) {
 			for (const rate of [0.3, 0.9, 2.5]) {
-				for (const levelDb of [0, -12]) {
+				for (const levelDb of [rate === 0.9 ? -12 : 0]) {
 					const f1Hz = equalTemperamentHz(midi) * (1 + 0.004 * (uniform() - 0.5));
 					const inharmonicity = 2e-4;
 					const samples = stiffTone({

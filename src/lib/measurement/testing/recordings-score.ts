@@ -88,8 +88,16 @@ export function judge(row: TruthRow, pair: PairMeasure | null): Outcome {
 	return denied ? 'wrong' : 'not measurable';
 }
 
-/** Measures every clip of the folder and judges every row of its table. */
-export async function scoreRecordings(folder: string, match = ''): Promise<ScoredClip[]> {
+/**
+ * Measures every clip of the folder and judges every row of its table.
+ * @param match part of the file names wanted
+ * @param seconds length used of each clip, the whole when left out
+ */
+export async function scoreRecordings(
+	folder: string,
+	match = '',
+	seconds?: number
+): Promise<ScoredClip[]> {
 	const truth = (await readTruth(folder)).filter(({ file }) => file.includes(match));
 	const clips: ScoredClip[] = [];
 	for (const file of new Set(truth.map((row) => row.file))) {
@@ -97,7 +105,7 @@ export async function scoreRecordings(folder: string, match = ''): Promise<Score
 		const { samples, sampleRateHz } = await decodeAudio(await readFile(path.join(folder, file)));
 		const kind = rows[0].kind === 'shift' ? 'unison' : rows[0].kind;
 		const notes = rows[0].notes.map((name) => midiFromNoteName(name) ?? 0);
-		const result = measureClip(samples, sampleRateHz, { kind, notes });
+		const result = measureClip(samples, sampleRateHz, { kind, notes, seconds });
 		const scored = rows.map((row) => {
 			const pair = pairOf(result, row);
 			return { row, outcome: judge(row, pair), pair };

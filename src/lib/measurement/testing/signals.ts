@@ -25,6 +25,9 @@ export interface DampedSine {
 	amplitude: number;
 	decayPerSecond: number;
 	phase: number;
+	/** Starts this much higher and glides down as exp(-t/glideSeconds). */
+	glideHz?: number;
+	glideSeconds?: number;
 }
 
 /** Adds damped sinusoids that begin at `atSeconds`. */
@@ -38,9 +41,12 @@ export function addSines(
 	for (const sine of sines) {
 		const omega = (2 * Math.PI * sine.hz) / sampleRateHz;
 		const gamma = sine.decayPerSecond / sampleRateHz;
+		const tau = (sine.glideSeconds ?? 0.35) * sampleRateHz;
+		const glide = (2 * Math.PI * (sine.glideHz ?? 0) * tau) / sampleRateHz;
 		for (let i = start; i < samples.length; i++) {
 			const n = i - start;
-			samples[i] += sine.amplitude * Math.exp(-gamma * n) * Math.cos(omega * n + sine.phase);
+			const turn = glide === 0 ? 0 : -glide * Math.expm1(-n / tau);
+			samples[i] += sine.amplitude * Math.exp(-gamma * n) * Math.cos(omega * n + turn + sine.phase);
 		}
 	}
 }
@@ -52,6 +58,9 @@ export interface ToneSpec {
 	strings: readonly { f1Hz: number; inharmonicity: number; level?: number }[];
 	partials?: number;
 	decayPerSecond?: number;
+	/** Every partial starts this many cents higher. */
+	glideCents?: number;
+	glideSeconds?: number;
 	/** Seed of phases and levels. */
 	seed: number;
 	/** White noise, dB below the tone's first half second; none when left out. */
@@ -74,6 +83,8 @@ export function stiffTone(spec: ToneSpec): Float32Array {
 			if (hz > 0.45 * sampleRateHz) continue;
 			sines.push({
 				hz,
+				glideHz: hz * (2 ** ((spec.glideCents ?? 0) / 1200) - 1),
+				glideSeconds: spec.glideSeconds,
 				amplitude: level / n,
 				decayPerSecond: decayPerSecond * (1 + 0.15 * n),
 				phase
