@@ -3,6 +3,7 @@ import { rmSync } from 'node:fs';
 import { join } from 'node:path';
 import { setTimeout as pause } from 'node:timers/promises';
 import { migrate } from '../lib/server/database/migrate';
+import { resetEnv } from '../lib/server/env';
 import { startCluster, startScratchCluster } from './cluster';
 import { startMailSink } from './mail-sink';
 import { requireBuild } from './setup/build';
@@ -149,6 +150,7 @@ export async function startApplication(options: ApplicationOptions): Promise<Run
 		};
 		// The services read their settings from the environment of this process.
 		Object.assign(process.env, settings);
+		resetEnv();
 		options.signal?.throwIfAborted();
 		await migrate(databaseUrl, 'up');
 		if (options.demo) await putDemo(options.say);

@@ -16,6 +16,7 @@ function attempt(seed: number, finishedAt: Date): AttemptSubmission {
 	const stimulus = generateBlock(seed % 2 === 0 ? 'unison' : 'interval', seed);
 	const random = createRandom(seed);
 	const trials = stimulus.trials.map((spec) => tune(spec, PERFECT_PERSON, random));
+	const lastedMs = trials.reduce((sum, trial) => sum + trial.committedAtMs, 60_000);
 	return {
 		id: randomUUID(),
 		drill: stimulus.drill as AttemptSubmission['drill'],
@@ -29,7 +30,7 @@ function attempt(seed: number, finishedAt: Date): AttemptSubmission {
 			userAgentClass: 'desktop-chromium'
 		},
 		clientScore: scoreBlock(stimulus, trials).score,
-		startedAt: new Date(finishedAt.getTime() - 300_000).toISOString(),
+		startedAt: new Date(finishedAt.getTime() - lastedMs).toISOString(),
 		finishedAt: finishedAt.toISOString()
 	};
 }
