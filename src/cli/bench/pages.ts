@@ -37,6 +37,13 @@ function scriptKb(html: string): number {
 	return bytes.reduce((sum, size) => sum + size, 0) / 1000;
 }
 
+/** A page's markup and what its Link header preloads, written as markup. */
+async function markup(visitor: Visitor, path: string): Promise<string> {
+	const answer = await visitor.ask(path);
+	const preloads = [...(answer.headers.get('link') ?? '').matchAll(/<([^>]+\.js)>/g)];
+	return preloads.map((match) => `href="${match[1]}"`).join('\n') + (await answer.text());
+}
+
 export async function lines(_quick: boolean): Promise<BenchLine[]> {
 	const application = await startApplication({
 		scratch: true,
@@ -46,11 +53,11 @@ export async function lines(_quick: boolean): Promise<BenchLine[]> {
 	});
 	try {
 		const visitor = new Visitor(application.origin);
-		const first = await (await visitor.ask('/')).text();
+		const first = await markup(visitor, '/');
 		const student = DEMO_SIGN_INS.find(({ role }) => role === 'student');
 		if (!student) throw new Error('The demonstration has no student.');
 		await visitor.signIn(student.email, student.password);
-		const drill = await (await visitor.ask('/practice/unison')).text();
+		const drill = await markup(visitor, '/practice/unison');
 		return [
 			benchLine('script of the first page, gzip', scriptKb(first), 'kB', { bar: 100 }),
 			benchLine('script of a drill page, gzip', scriptKb(drill), 'kB', { bar: 180 })
