@@ -26,6 +26,7 @@ const escapeHtml = (text: string) =>
 /** A name inside a sentence or a subject line: one line, of a sensible length. */
 const oneLine = (text: string) =>
 	text
+		// Control signs are what is taken out here.
 		// eslint-disable-next-line no-control-regex
 		.replace(/[\u0000-\u001f\u007f\u2028\u2029]+/g, ' ')
 		.trim()
